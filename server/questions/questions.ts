@@ -1,0 +1,4 @@
+/** Answers questions. */
+export interface Questions {
+  close(): Promise<void>;
+}
