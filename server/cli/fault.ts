@@ -1,5 +1,14 @@
 /** Exit codes of the commands, one for each thing a person can mend; documented in README.md. */
-export const EXIT = { fault: 1, settings: 2, portInUse: 3, missingProgram: 4, databaseWontStart: 5, dataOfAnotherVersion: 6, databaseUnreachable: 7 } as const;
+export const EXIT = {
+  fault: 1,
+  settings: 2,
+  portInUse: 3,
+  missingProgram: 4,
+  databaseWontStart: 5,
+  dataOfAnotherVersion: 6,
+  databaseUnreachable: 7,
+  dataInUse: 8,
+} as const;
 
 /** A failure of a command: what happened and what to do, printed without a stack. */
 export class CommandFault extends Error {

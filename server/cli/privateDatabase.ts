@@ -8,6 +8,7 @@ import path from "node:path";
 import { setTimeout as pause } from "node:timers/promises";
 import { promisify } from "node:util";
 import { CommandFault } from "./fault.ts";
+import { ownFolder } from "./folderOwner.ts";
 
 const run = promisify(execFile);
 const DATABASE = "perhundred";
@@ -43,7 +44,10 @@ async function freePort(): Promise<number> {
 /** Major and minor version of the installed server, such as "10.11". */
 async function installedVersion(): Promise<string> {
   const { stdout } = await run("mariadbd", ["--no-defaults", "--version"]).catch(() => {
-    throw new CommandFault("missingProgram", "MariaDB's server (mariadbd) isn't installed. Install it with: apt-get install -y mariadb-server");
+    throw new CommandFault(
+      "missingProgram",
+      "MariaDB's server (mariadbd) isn't installed. Install it with: apt-get install -y mariadb-server",
+    );
   });
   const version = /Ver (\d+\.\d+)/.exec(stdout)?.[1];
   if (!version) throw new CommandFault("databaseWontStart", `mariadbd gave no version that can be read: ${stdout.trim()}`);
@@ -65,8 +69,13 @@ async function checkVersion(folder: string, version: string): Promise<void> {
 async function initialise(folder: string, dataFolder: string, version: string): Promise<void> {
   const user = os.userInfo().username;
   await run("mariadb-install-db", [
-    "--no-defaults", `--datadir=${dataFolder}`, `--user=${user}`, "--auth-root-authentication-method=socket",
-    `--auth-root-socket-user=${user}`, "--skip-test-db", "--innodb-log-file-size=64M",
+    "--no-defaults",
+    `--datadir=${dataFolder}`,
+    `--user=${user}`,
+    "--auth-root-authentication-method=socket",
+    `--auth-root-socket-user=${user}`,
+    "--skip-test-db",
+    "--innodb-log-file-size=64M",
   ]).catch(async (error: unknown) => {
     await rm(dataFolder, { recursive: true, force: true });
     throw new CommandFault("databaseWontStart", `MariaDB's data folder can't be made in ${folder}: ${String(error)}`);
@@ -87,13 +96,22 @@ async function waitUntilUp(server: ChildProcess, socket: string, errorLog: strin
   const deadline = Date.now() + START_TIMEOUT_MS;
   while (Date.now() < deadline) {
     if (server.exitCode !== null || server.signalCode !== null) break;
-    const isUp = await run("mariadb-admin", ["--no-defaults", `--socket=${socket}`, `-u${user}`, "ping"]).then(() => true, () => false);
+    const isUp = await run("mariadb-admin", ["--no-defaults", `--socket=${socket}`, `-u${user}`, "ping"]).then(
+      () => true,
+      () => false,
+    );
     if (isUp) return;
     await pause(50);
   }
   const log = await readFile(errorLog, "utf8").catch(() => "");
-  const lines = log.split("\n").filter((line) => line.includes("[ERROR]")).slice(-3);
-  throw new CommandFault("databaseWontStart", `MariaDB didn't start. Its last errors (${errorLog}):\n${lines.join("\n") || "none were written"}`);
+  const lines = log
+    .split("\n")
+    .filter((line) => line.includes("[ERROR]"))
+    .slice(-3);
+  throw new CommandFault(
+    "databaseWontStart",
+    `MariaDB didn't start. Its last errors (${errorLog}):\n${lines.join("\n") || "none were written"}`,
+  );
 }
 
 /**
@@ -107,6 +125,7 @@ export async function startPrivateDatabase(folder: string): Promise<PrivateDatab
   await mkdir(folder, { recursive: true });
   await chmod(folder, 0o700);
   await checkVersion(folder, version);
+  const letGo = await ownFolder(folder);
   if (!existsSync(dataFolder)) await initialise(folder, dataFolder, version);
   const { password } = await readSecrets(folder);
   const inside = path.join(folder, "mariadb.sock");
@@ -117,10 +136,21 @@ export async function startPrivateDatabase(folder: string): Promise<PrivateDatab
   const server = spawn(
     "mariadbd",
     [
-      "--no-defaults", `--user=${os.userInfo().username}`, `--datadir=${dataFolder}`, `--socket=${socket}`, `--port=${port}`,
-      "--bind-address=127.0.0.1", "--skip-name-resolve", "--skip-log-bin", "--character-set-server=utf8mb4",
-      "--collation-server=utf8mb4_unicode_ci", "--max-allowed-packet=64M", "--innodb-buffer-pool-size=256M",
-      "--innodb-log-file-size=64M", `--log-error=${errorLog}`, `--pid-file=${path.join(folder, "mariadb.pid")}`,
+      "--no-defaults",
+      `--user=${os.userInfo().username}`,
+      `--datadir=${dataFolder}`,
+      `--socket=${socket}`,
+      `--port=${port}`,
+      "--bind-address=127.0.0.1",
+      "--skip-name-resolve",
+      "--skip-log-bin",
+      "--character-set-server=utf8mb4",
+      "--collation-server=utf8mb4_unicode_ci",
+      "--max-allowed-packet=64M",
+      "--innodb-buffer-pool-size=256M",
+      "--innodb-log-file-size=64M",
+      `--log-error=${errorLog}`,
+      `--pid-file=${path.join(folder, "mariadb.pid")}`,
     ],
     // Its own process group: Ctrl-C reaches us first, and we end it when requests are done.
     { stdio: "ignore", detached: true },
@@ -132,6 +162,7 @@ export async function startPrivateDatabase(folder: string): Promise<PrivateDatab
       await ended;
     }
     if (socketFolder) await rm(socketFolder, { recursive: true, force: true });
+    await letGo();
   };
   try {
     await waitUntilUp(server, socket, errorLog);

@@ -1,4 +1,148 @@
-/** Answers questions. */
+import { Piscina } from "piscina";
+import type { Design } from "../../shared/contracts/design.ts";
+import type { Question } from "../../shared/contracts/questions.ts";
+import type { Table } from "../../shared/contracts/tables.ts";
+import type { Config } from "../config.ts";
+import { AppError } from "../errors.ts";
+import type { CodebookVariable } from "../microdata/codebook.ts";
+import { ColumnCache } from "../microdata/columnCache.ts";
+import { workerOptions } from "../microdata/workers.ts";
+import type { Release } from "../models/Release.ts";
+import type { Reader } from "../policies/policy.ts";
+import { presentTable } from "../presenters/table.ts";
+import { AnswerCache } from "./answers.ts";
+import { caption } from "./caption.ts";
+import { compileQuestion, type CompiledQuestion } from "./compile.ts";
+import { tableNotes } from "./notes.ts";
+import { tableShape } from "./nodes.ts";
+import { fitsComplements, type Answer, type Work } from "./work.ts";
+
+/** Names the way of computing in every answer; raised whenever a figure could come out otherwise. */
+export const ENGINE = "Perhundred engine 1";
+const ANSWERS_KEPT = 500;
+
+/** What a release is to the questions part. */
+export interface AskedRelease {
+  release: Release;
+  design: Design;
+  variables: readonly CodebookVariable[];
+}
+
+/** Where a release's columns and sample come from. */
+export type ColumnSource = Pick<ColumnCache, "column" | "sample">;
+
+/** Answers questions in worker threads. */
 export interface Questions {
+  /**
+   * @throws {AppError} `invalid` where the question doesn't fit the codebook; `unprocessable` where the design refuses.
+   */
+  table(asked: AskedRelease, question: Question, reader: Reader): Promise<Table>;
   close(): Promise<void>;
+}
+
+const numberOfValues = (compiled: CompiledQuestion, axis: "down" | "across") =>
+  compiled.breakdowns.filter((breakdown) => breakdown.axis === axis).map((breakdown) => breakdown.values.length);
+
+/** Gathers what a worker needs; also the way in for checks that run the work in their own thread. */
+export async function prepareWork(
+  compiled: CompiledQuestion,
+  question: Question,
+  source: {
+    releaseId: string;
+    columns: ColumnSource;
+    variables: readonly CodebookVariable[];
+    minimums: Design["minimums"] | null;
+  },
+): Promise<Work> {
+  const idOf = new Map(source.variables.map((variable) => [variable.name, variable.id]));
+  const loaded = await Promise.all(
+    compiled.plan.columns.map(
+      async (name) => [name, (await source.columns.column(source.releaseId, idOf.get(name)!)).values] as const,
+    ),
+  );
+  const sample = await source.columns.sample(source.releaseId);
+  const { comparison } = question;
+  const groupAxis = comparison.kind === "group" ? compiled.breakdowns.findIndex(({ name }) => name === comparison.breakdown) : -1;
+  const groupValue =
+    comparison.kind === "group" ? compiled.breakdowns[groupAxis]!.values.findIndex(({ code }) => code === comparison.value) : -1;
+  return {
+    plan: compiled.plan,
+    down: numberOfValues(compiled, "down"),
+    across: numberOfValues(compiled, "across"),
+    columns: Object.fromEntries(loaded),
+    sample,
+    options: { level: question.level, interval: question.interval, difference: question.difference, comparison },
+    groupAxis,
+    groupValue,
+    minimums: source.minimums,
+  };
+}
+
+function refuseTooLarge(compiled: CompiledQuestion, question: Question): void {
+  if (question.comparison.kind !== "rest") return;
+  const figures = tableShape(numberOfValues(compiled, "down"), numberOfValues(compiled, "across")).nodes.length;
+  const baseCells = compiled.breakdowns.reduce((product, { values }) => product * (values.length + 1), 1);
+  if (fitsComplements(figures, baseCells)) return;
+  const message = "This table is too large to compare each group with the rest. Compare with everyone, or split by less.";
+  throw new AppError("invalid", message, { comparison: message });
+}
+
+/** @param parts.columns Given by tests; otherwise a cache over the database is made. */
+export function createQuestions(parts: { config: Config; columns: ColumnCache }): Questions {
+  const pool = new Piscina<Work, Answer>({
+    ...workerOptions(new URL("./work.ts", import.meta.url)),
+    minThreads: 1,
+    maxThreads: parts.config.workers,
+  });
+  const answers = new AnswerCache<Answer>(ANSWERS_KEPT);
+
+  async function work(asked: AskedRelease, compiled: CompiledQuestion, question: Question): Promise<Answer> {
+    const { release, design, variables } = asked;
+    const prepared = await prepareWork(compiled, question, {
+      releaseId: release.id,
+      columns: parts.columns,
+      variables,
+      minimums: design.minimums,
+    });
+    try {
+      return await pool.run(prepared);
+    } catch (error) {
+      if (error instanceof Error && error.name === "DesignError") throw new AppError("unprocessable", error.message);
+      throw error;
+    }
+  }
+
+  return {
+    async table(asked, question, reader) {
+      const { release, design, variables } = asked;
+      const compiled = compileQuestion(question, variables);
+      refuseTooLarge(compiled, question);
+      const key = `${release.id} ${release.checksum} ${release.version} ${JSON.stringify(question)}`;
+      const answer = await answers.get(key, () => work(asked, compiled, question));
+      const measure = compiled.plan.outcome.measure;
+      return presentTable(
+        {
+          question,
+          release: {
+            id: release.id,
+            surveyId: release.surveyId,
+            surveyTitle: release.survey!.title,
+            wave: release.wave,
+            checksum: release.checksum,
+            designDf: answer.designDf,
+          },
+          engine: ENGINE,
+          measure,
+          breakdowns: compiled.breakdowns,
+          caption: caption(question, release, variables),
+          notes: (familySize) => tableNotes(question, design, measure, familySize),
+          hidesUnreliable: !reader.roles.includes("epidemiologist") && !reader.roles.includes("steward"),
+        },
+        answer,
+      );
+    },
+    async close() {
+      await pool.destroy();
+    },
+  };
 }

@@ -1,6 +1,63 @@
 import { Router } from "express";
+import { z } from "zod";
+import { Question } from "../../shared/contracts/questions.ts";
 import type { Services } from "../app.ts";
+import { AppError } from "../errors.ts";
+import { currentReader, requirePerson } from "../middleware/signedIn.ts";
+import { parse } from "../parse.ts";
+import { releasePolicy } from "../policies/survey.ts";
+import { caption } from "../questions/caption.ts";
+import { record } from "../services/ledger.ts";
+import { authorize, loadRelease } from "../services/surveyAccess.ts";
+import { loadCodebook } from "../services/codebook.ts";
 
-export function questionRoutes(_services: Services): Router {
-  return Router();
+/** `POST /api/tables/downloads`: says that a table's figures leave the page, before they do. */
+const DownloadInput = z.strictObject({ question: Question, format: z.enum(["csv", "text", "png", "svg"]) });
+
+/** `POST /api/tables` and the record of downloads. */
+export function questionRoutes({ questions, sequelize }: Services): Router {
+  const router = Router();
+
+  const load = async (request: Parameters<typeof currentReader>[0], question: Question) => {
+    const reader = currentReader(request);
+    const { release, access } = await loadRelease(reader, question.releaseId);
+    if (releasePolicy.read(reader, access) && release.status !== "published") {
+      const why = release.status === "draft" ? "isn't published yet" : `was ${release.status}`;
+      throw new AppError("conflict", `This release ${why}, so it takes no questions. Choose a published release.`);
+    }
+    authorize(releasePolicy, "ask", reader, access);
+    if (release.design === null) throw new AppError("conflict", "This release has no design yet.");
+    return { reader, release, design: release.design, variables: await loadCodebook(release) };
+  };
+
+  router.post("/tables", requirePerson, async (request, response) => {
+    const question = parse(Question, request.body);
+    const { reader, ...asked } = await load(request, question);
+    const table = await questions.table(asked, question, reader);
+    await sequelize.transaction((transaction) =>
+      record(transaction, reader, {
+        action: "question.asked",
+        surveyId: asked.release.surveyId,
+        subjectId: asked.release.id,
+        summary: `Asked: ${table.caption}`,
+      }),
+    );
+    response.set("Cache-Control", "no-store").json(table);
+  });
+
+  router.post("/tables/downloads", requirePerson, async (request, response) => {
+    const { question, format } = parse(DownloadInput, request.body);
+    const { reader, release, variables } = await load(request, question);
+    await sequelize.transaction((transaction) =>
+      record(transaction, reader, {
+        action: "table.downloaded",
+        surveyId: release.surveyId,
+        subjectId: release.id,
+        summary: `Took away as ${format}: ${caption(question, release, variables)}`,
+      }),
+    );
+    response.status(204).end();
+  });
+
+  return router;
 }

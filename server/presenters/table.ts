@@ -1,0 +1,107 @@
+import type { Question } from "../../shared/contracts/questions.ts";
+import type { Cell, ComparisonResult, Reliability, Table } from "../../shared/contracts/tables.ts";
+import type { CompiledBreakdown } from "../questions/compile.ts";
+import type { AnsweredNode, Answer } from "../questions/work.ts";
+import { adjustPValues } from "../statistics/adjustments.ts";
+import type { ContrastEstimate } from "../statistics/estimate.ts";
+import { reliabilityOfMean, reliabilityOfShare } from "../statistics/reliability.ts";
+
+/** Everything about a table but its figures. */
+export interface TableFrame {
+  question: Question;
+  release: Table["release"];
+  engine: string;
+  measure: Table["measure"];
+  breakdowns: CompiledBreakdown[];
+  caption: string;
+  /** Notes that name the size of the family of comparisons. */
+  notes: (familySize: number) => string[];
+  /** Planners aren't shown figures that can't be relied on. */
+  hidesUnreliable: boolean;
+}
+
+const isComparable = (node: AnsweredNode) => node.withheld === null && node.contrast !== null;
+
+/** Adjusted p-values by node, over one family. */
+function adjusted(nodes: readonly AnsweredNode[], method: Question["adjustment"]): Map<AnsweredNode, number | null> {
+  const family = nodes.filter(isComparable);
+  const values = adjustPValues(
+    family.map((node) => node.contrast?.p ?? null),
+    method,
+  );
+  return new Map(family.map((node, i) => [node, values[i] ?? null]));
+}
+
+function reliabilityOf(node: AnsweredNode, measure: Table["measure"]): Reliability {
+  return measure === "share" ? reliabilityOfShare(node.estimate) : reliabilityOfMean(node.estimate);
+}
+
+function presentComparison(contrast: ContrastEstimate, pAdjusted: number | null, level: number): ComparisonResult {
+  const isShown = pAdjusted !== null && pAdjusted < 1 - level / 100 && contrast.difference !== null && contrast.difference !== 0;
+  return {
+    reference: contrast.reference,
+    difference: contrast.difference,
+    se: contrast.se,
+    low: contrast.low,
+    high: contrast.high,
+    df: contrast.df,
+    p: contrast.p,
+    pAdjusted,
+    ratio: contrast.ratio,
+    ratioLow: contrast.ratioLow,
+    ratioHigh: contrast.ratioHigh,
+    detectable: contrast.detectable,
+    direction: isShown ? (contrast.difference! > 0 ? "higher" : "lower") : "none",
+  };
+}
+
+/** Builds the table that leaves the server: withheld figures have a key and a reason, nothing else. */
+export function presentTable(frame: TableFrame, answer: Answer): Table {
+  const { question, measure } = frame;
+  const cells = answer.nodes.filter((node) => node.kind === "cell");
+  const margins = answer.nodes.filter((node) => node.kind !== "cell");
+  const pAdjusted = new Map([...adjusted(cells, question.adjustment), ...adjusted(margins, question.adjustment)]);
+  const present = (node: AnsweredNode): Cell => {
+    const key = node.key.map((value, axis) => (value === null ? null : frame.breakdowns[axis]!.values[value]!.code));
+    if (node.withheld !== null) return { key, shown: false, reason: node.withheld };
+    const reliability = reliabilityOf(node, measure);
+    if (frame.hidesUnreliable && reliability.verdict === "unreliable") return { key, shown: false, reason: "unreliable" };
+    const { estimate } = node;
+    return {
+      key,
+      shown: true,
+      respondents: estimate.respondents,
+      affectedRespondents: measure === "share" ? estimate.affectedRespondents : null,
+      people: estimate.people,
+      peopleSe: estimate.peopleSe,
+      affectedPeople: measure === "share" ? estimate.affectedPeople : null,
+      affectedPeopleSe: measure === "share" ? estimate.affectedPeopleSe : null,
+      estimate: estimate.estimate,
+      se: estimate.se,
+      low: estimate.low,
+      high: estimate.high,
+      df: estimate.df,
+      deff: estimate.deff,
+      effectiveRespondents: estimate.effectiveRespondents,
+      cv: estimate.cv,
+      clipped: estimate.clipped,
+      reliability,
+      ...(node.contrast ? { comparison: presentComparison(node.contrast, pAdjusted.get(node) ?? null, question.level) } : {}),
+    };
+  };
+  const whole = present(answer.nodes[0]!);
+  const familySize = cells.filter(isComparable).length;
+  return {
+    question,
+    release: { ...frame.release, designDf: answer.designDf },
+    engine: frame.engine,
+    measure,
+    breakdowns: frame.breakdowns,
+    whole,
+    cells: cells.map(present),
+    margins: margins.filter((node) => node.kind === "margin").map(present),
+    familySize,
+    caption: frame.caption,
+    notes: frame.notes(familySize),
+  };
+}
