@@ -12,6 +12,7 @@ import { healthRoutes } from "./routes/health.ts";
 import { holdingsRoutes } from "./routes/holdings.ts";
 import { importRoutes } from "./routes/imports.ts";
 import { ledgerRoutes } from "./routes/ledger.ts";
+import { openapiRoutes } from "./routes/openapi.ts";
 import { peopleRoutes } from "./routes/people.ts";
 import { questionRoutes } from "./routes/questions.ts";
 import { releaseRoutes } from "./routes/releases.ts";
@@ -38,6 +39,7 @@ export function createApp(services: Services): Express {
   app.use(logRequests(services.logger));
   app.use(secureHeaders(services.config));
   app.use("/api", healthRoutes(services));
+  app.use("/api", openapiRoutes(services));
   app.use("/api", sessions(services));
   app.use("/api", sessionRoutes(services));
   app.use("/api", accountRoutes(services));
