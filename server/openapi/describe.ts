@@ -2,8 +2,11 @@ import { z } from "zod";
 import { Problem } from "../../shared/contracts/problem.ts";
 import { OPERATIONS, type Operation } from "./operations.ts";
 
-const schemaOf = (schema: z.ZodType, io: "input" | "output") =>
-  z.toJSONSchema(schema, { io, unrepresentable: "any", target: "draft-2020-12" });
+/** A contract as JSON Schema; its own `$id` makes its inner references resolve inside it rather than at the document's root. */
+const schemaOf = (name: string, schema: z.ZodType, io: "input" | "output") => ({
+  $id: `urn:perhundred:schemas:${name.replaceAll(/[^a-z]+/gi, "-")}-${io}`,
+  ...z.toJSONSchema(schema, { io, unrepresentable: "any", target: "draft-2020-12" }),
+});
 
 function describeOperation({ method, path, summary, body, answer, status }: Operation) {
   const name = `${method}${path}`;
