@@ -1,0 +1,16 @@
+import type { ReactNode } from "react";
+
+/** Label and value, line by line. Values keep together; a long one wraps under itself. */
+export function Facts({ facts }: { facts: readonly { label: string; value: ReactNode; note?: ReactNode }[] }) {
+  return (
+    <dl className="border-t border-line">
+      {facts.map(({ label, value, note }) => (
+        <div key={label} className="flex flex-wrap justify-between gap-x-6 gap-y-0.5 border-b border-line py-2 text-[0.9375rem]">
+          <dt className="text-muted">{label}</dt>
+          <dd className="ml-auto text-right tabular-nums">{value}</dd>
+          {note !== undefined && <dd className="w-full text-sm text-muted">{note}</dd>}
+        </div>
+      ))}
+    </dl>
+  );
+}
