@@ -2,9 +2,11 @@ import hooks from "eslint-plugin-react-hooks";
 import { defineConfig } from "eslint/config";
 import tseslint from "typescript-eslint";
 
+const severity = <Options>(level: "error", options: Options): ["error", Options] => [level, options];
+
 /** Imports that a folder may not make, with the reason that lint prints. */
 const forbid = (patterns: { group: string[]; message: string }[]) => ({
-  "no-restricted-imports": ["error", { patterns }] as const,
+  "no-restricted-imports": severity("error", { patterns }),
 });
 
 const toServer = { group: ["**/server/**"], message: "Pages reach the server through its contracts only." };

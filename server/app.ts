@@ -2,6 +2,7 @@ import express, { type Express } from "express";
 import type { Sequelize } from "sequelize";
 import type { Config } from "./config.ts";
 import { handleErrors, notFound } from "./middleware/errors.ts";
+import type { SignInLimits } from "./middleware/limits.ts";
 import { logRequests, type Logger } from "./middleware/requestLog.ts";
 import { secureHeaders } from "./middleware/secureHeaders.ts";
 import { serveClient } from "./middleware/client.ts";
@@ -27,6 +28,7 @@ export interface Services {
   logger: Logger;
   /** Key that signs session cookies. */
   sessionSecret: string;
+  signInLimits: SignInLimits;
   imports: Imports;
   questions: Questions;
 }

@@ -37,7 +37,14 @@ export async function startServer(parts: {
   const { config, database, logger } = parts;
   const imports = await createImports({ config, sequelize: database.sequelize, databaseUrl: database.url, logger });
   const questions = createQuestions({ config, sequelize: database.sequelize });
-  const services: Services = { config, sequelize: database.sequelize, logger, sessionSecret: await sessionSecret(config), imports, questions };
+  const services: Services = {
+    config,
+    sequelize: database.sequelize,
+    logger,
+    sessionSecret: await sessionSecret(config),
+    imports,
+    questions,
+  };
   const server = http.createServer(createApp(services));
   // Keep-alive connections must not hold up a stop.
   server.keepAliveTimeout = 5000;

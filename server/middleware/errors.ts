@@ -16,11 +16,20 @@ function statusOf(error: unknown): number | null {
 
 function problemOf(error: unknown): Problem {
   if (error instanceof AppError) {
-    return { type: `urn:perhundred:${error.code}`, title: error.title, status: error.status, detail: error.message, fields: error.fields };
+    return {
+      type: `urn:perhundred:${error.code}`,
+      title: error.title,
+      status: error.status,
+      detail: error.message,
+      fields: error.fields,
+    };
   }
   const status = statusOf(error);
   if (status !== null) {
-    const detail = status === 413 ? "The request is larger than taken here. Nothing was changed." : "The request can't be read. Nothing was changed.";
+    const detail =
+      status === 413
+        ? "The request is larger than taken here. Nothing was changed."
+        : "The request can't be read. Nothing was changed.";
     return { type: "urn:perhundred:request", title: "That can't be read", status, detail };
   }
   return {

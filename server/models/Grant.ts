@@ -1,4 +1,12 @@
-import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes, type NonAttribute, type Sequelize } from "sequelize";
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type NonAttribute,
+  type Sequelize,
+} from "sequelize";
 import { Person } from "./Person.ts";
 import { Survey } from "./Survey.ts";
 
@@ -17,6 +25,7 @@ export class Grant extends Model<InferAttributes<Grant>, InferCreationAttributes
   declare person?: NonAttribute<Person>;
   declare giver?: NonAttribute<Person>;
   declare revoker?: NonAttribute<Person | null>;
+  declare survey?: NonAttribute<Survey>;
 }
 
 /** Registers grants. */

@@ -1,5 +1,12 @@
 import type { z } from "zod";
-import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes, type Sequelize } from "sequelize";
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type Sequelize,
+} from "sequelize";
 import type { ImportProblem, ImportStatus } from "../../shared/contracts/imports.ts";
 
 /** The bringing-in of one release, with its progress, so that any process can tell of it. */

@@ -1,5 +1,13 @@
-import { DataTypes, Model, type InferAttributes, type InferCreationAttributes, type NonAttribute, type Sequelize } from "sequelize";
+import {
+  DataTypes,
+  Model,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type NonAttribute,
+  type Sequelize,
+} from "sequelize";
 import { Person } from "./Person.ts";
+import type { Release } from "./Release.ts";
 
 /** A survey; its waves are releases. */
 export class Survey extends Model<InferAttributes<Survey>, InferCreationAttributes<Survey>> {
@@ -9,6 +17,8 @@ export class Survey extends Model<InferAttributes<Survey>, InferCreationAttribut
   declare createdAt: Date;
   /** Loaded with `include: "stewards"`. */
   declare stewards?: NonAttribute<Person[]>;
+  /** Loaded with `include: "releases"`. */
+  declare releases?: NonAttribute<Release[]>;
 }
 
 /** One steward of one survey. */

@@ -9,4 +9,6 @@ export interface Reader {
 }
 
 /** Named rules over one kind of thing. `read` decides between 404 and 403. */
-export type Policy<Thing> = Record<string, (reader: Reader, thing: Thing) => boolean> & { read: (reader: Reader, thing: Thing) => boolean };
+export type Policy<Thing> = Record<string, (reader: Reader, thing: Thing) => boolean> & {
+  read: (reader: Reader, thing: Thing) => boolean;
+};

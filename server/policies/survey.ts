@@ -15,9 +15,11 @@ export interface ReleaseAccess extends SurveyAccess {
 }
 
 /** A steward keeps the role: someone who lost it no longer acts on surveys they once looked after. */
-const isSteward = (reader: Reader, survey: SurveyAccess) => reader.roles.includes("steward") && survey.stewardIds.includes(reader.id);
+const isSteward = (reader: Reader, survey: SurveyAccess) =>
+  reader.roles.includes("steward") && survey.stewardIds.includes(reader.id);
 const maySee = (reader: Reader, survey: SurveyAccess) => isSteward(reader, survey) || survey.hasActiveGrant;
-const mayAskAtAll = (reader: Reader) => reader.roles.some((role) => role === "epidemiologist" || role === "planner" || role === "steward");
+const mayAskAtAll = (reader: Reader) =>
+  reader.roles.some((role) => role === "epidemiologist" || role === "planner" || role === "steward");
 
 /** Surveys and what belongs to them as wholes. */
 export const surveyPolicy = {

@@ -28,7 +28,12 @@ export async function surveyAccesses(reader: Reader, surveyIds: readonly string[
 }
 
 /** Throws 404 for what the reader may not see (as if it weren't there) and 403 for what they may see but not do. */
-export function authorize<Thing, Rules extends Policy<Thing>>(rules: Rules, act: keyof Rules & string, reader: Reader, thing: Thing): void {
+export function authorize<Thing, Rules extends Policy<Thing>>(
+  rules: Rules,
+  act: keyof Rules & string,
+  reader: Reader,
+  thing: Thing,
+): void {
   if (!rules.read(reader, thing)) throw new AppError("notFound", "There is nothing here, or you may not see it.");
   const rule = rules[act];
   if (!rule?.(reader, thing)) throw new AppError("forbidden", "You may see this, but not do that. Nothing was changed.");

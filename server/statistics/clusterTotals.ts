@@ -25,8 +25,8 @@ export interface ClusterTable {
   cell: Uint32Array;
   /** Σ w of each entry. */
   weight: Float64Array;
-  /** Σ w (y − the mean of the entry's own cell). */
-  residual: Float64Array;
+  /** Σ w (y − centre) of each entry. */
+  score: Float64Array;
 }
 
 /**
@@ -50,7 +50,7 @@ export function tabulate(
     start: new Uint32Array(clusters + 1),
     cell: new Uint32Array(capacity),
     weight: new Float64Array(capacity),
-    residual: new Float64Array(capacity),
+    score: new Float64Array(capacity),
   };
   const totals = emptyTotals(cells, centre);
   const { respondents, affected, squaredWeight, squaredScore } = totals;
@@ -77,7 +77,7 @@ export function tabulate(
       const y = outcome[row]!;
       const score = w * (y - centre);
       table.weight[entry]! += w;
-      table.residual[entry]! += score;
+      table.score[entry]! += score;
       respondents[cell]! += 1;
       if (y !== 0) affected[cell]! += 1;
       squaredWeight[cell]! += w * w;
@@ -89,17 +89,12 @@ export function tabulate(
   return { totals, table };
 }
 
-/** Adds the entries up to cells, then turns each entry's score into its residual from the cell's mean. */
 function sumCells(table: ClusterTable, totals: CellTotals): void {
   const entries = table.start.at(-1) ?? 0;
   for (let entry = 0; entry < entries; entry++) {
     const cell = table.cell[entry]!;
     totals.weight[cell]! += table.weight[entry]!;
-    totals.score[cell]! += table.residual[entry]!;
-  }
-  const mean = totals.score.map((score, cell) => (totals.weight[cell]! > 0 ? score / totals.weight[cell]! : 0));
-  for (let entry = 0; entry < entries; entry++) {
-    table.residual[entry]! -= mean[table.cell[entry]!]! * table.weight[entry]!;
+    totals.score[cell]! += table.score[entry]!;
   }
 }
 

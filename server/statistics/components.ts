@@ -8,8 +8,6 @@ export interface Components {
   /** The components of cell c are component[cellStart[c]] to component[cellStart[c + 1] − 1]. */
   cellStart: Uint32Array;
   component: Uint32Array;
-  /** What to add to a residual from the cell's mean, per unit of weight, for one from the component's. */
-  shift: Float64Array;
 }
 
 /** A target's clusterwise residual and weight, as Σ sign · (those of the component). */
@@ -66,14 +64,9 @@ function layOut(totals: CellTotals, unions: readonly Target[]): Components {
   for (let cell = 0; cell < totals.cells; cell++) cellStart[cell + 1]! += cellStart[cell]!;
   const size = cellStart[totals.cells]!;
   const component = new Uint32Array(size);
-  const shift = new Float64Array(size);
   const next = cellStart.slice();
   unions.forEach((union, index) => {
-    for (const cell of union.cells) {
-      const slot = next[cell]!++;
-      component[slot] = index;
-      shift[slot] = totals.weight[cell]! > 0 ? totals.score[cell]! / totals.weight[cell]! - domains[index]!.centredMean : 0;
-    }
+    for (const cell of union.cells) component[next[cell]!++] = index;
   });
-  return { count: unions.length, domains, cellStart, component, shift };
+  return { count: unions.length, domains, cellStart, component };
 }

@@ -5,7 +5,7 @@ import { type DomainTotals, domainTotals, type Target } from "./domainTotals.ts"
 import { adjustedEffectiveSize, effectiveSize, intervalFor, type IntervalMethod, type Level } from "./intervals.ts";
 import { linearizedMoments } from "./linearizedMoments.ts";
 import type { ContrastVariances, Moments, TargetPair } from "./moments.ts";
-import { countUnits, findPresence } from "./presence.ts";
+import { countUnits, eitherOf, presenceFinder } from "./presence.ts";
 import { replicateMoments } from "./replicateMoments.ts";
 import type { Assignment, Sample } from "./types.ts";
 import { varianceLevels } from "./varianceLevels.ts";
@@ -82,7 +82,7 @@ export function estimateTargets(
   const { totals, table } = tabulate(sample, assignment, sample.psuStart);
   const domains = targets.map((target) => domainTotals(totals, target));
   const plan = planComponents(totals, targets, domains);
-  const presence = findPresence(table, plan.components, plan.terms);
+  const presence = targets.map(presenceFinder(table, totals.cells));
   const isBinary = options.isBinary && assignment.isBinary;
   const pairs = contrasts.flatMap(({ of, from }): TargetPair[] => (typeof from === "number" ? [{ of, from }] : []));
   let moments: Moments;
@@ -95,7 +95,7 @@ export function estimateTargets(
   }
   const declaredDf = sample.replicates?.degreesOfFreedom ?? null;
   const estimates = domains.map((domain, index) => {
-    const units = countUnits(presence.psusOf(index), sample.stratumStart);
+    const units = countUnits(presence[index]!, sample.stratumStart);
     const df = declaredDf ?? units.psus - units.strata;
     return describe(domain, units, df, moments.ofTarget(index), options);
   });
@@ -103,7 +103,7 @@ export function estimateTargets(
     const side = sideOf(estimates[of]!);
     if (typeof from !== "number")
       return compareSides(side, fixedSide(from.fixed), fixedVariances(side, isBinary), side.df, options);
-    const units = countUnits(presence.psusOfEither(of, from), sample.stratumStart);
+    const units = countUnits(eitherOf(presence[of]!, presence[from]!), sample.stratumStart);
     const df = declaredDf ?? units.psus - units.strata;
     return compareSides(side, sideOf(estimates[from]!), moments.ofContrast(of, from), df, options);
   });

@@ -1,63 +1,51 @@
 import type { ClusterTable } from "./clusterTotals.ts";
-import type { Components, Term } from "./components.ts";
+import type { Target } from "./domainTotals.ts";
 
-/** Which PSUs hold a respondent of each target, as sets of bits. */
-export interface Presence {
-  psusOf: (target: number) => Uint32Array;
-  psusOfEither: (target: number, other: number) => Uint32Array;
-}
+/** Finds the PSUs that hold at least one counted respondent of a domain, as a set of bits. */
+export type PresenceOf = (target: Target) => Uint32Array;
 
-/** Finds the PSUs that hold at least one counted respondent of each target. */
-export function findPresence(table: ClusterTable, components: Components, terms: readonly Term[][]): Presence {
+/** @param table PSUs × cells. */
+export function presenceFinder(table: ClusterTable, cells: number): PresenceOf {
   const psus = table.start.length - 1;
   const words = Math.ceil(psus / 32);
-  const { count, cellStart, component } = components;
-  const present = new Uint32Array(count * words);
-  /** PSUs in which nobody is outside the component: those its complement is absent from. */
-  const alone = new Uint32Array(count * words);
-  const isTakenAway = new Uint8Array(count);
-  for (const term of terms.flat()) if (term.sign < 0) isTakenAway[term.component] = 1;
-  const entriesOf = new Uint32Array(count);
+  const present = new Uint32Array(cells * words);
+  const anyCell = new Uint32Array(words);
+  const severalCells = new Uint32Array(words);
   for (let psu = 0; psu < psus; psu++) {
-    const first = table.start[psu]!;
-    const end = table.start[psu + 1]!;
     const bit = 1 << (psu & 31);
     const word = psu >>> 5;
-    for (let entry = first; entry < end; entry++) {
-      const cell = table.cell[entry]!;
-      for (let slot = cellStart[cell]!; slot < cellStart[cell + 1]!; slot++) {
-        const k = component[slot]!;
-        present[k * words + word]! |= bit;
-        if (isTakenAway[k] === 1) entriesOf[k]! += 1;
-      }
-    }
-    for (let entry = first; entry < end; entry++) {
-      const cell = table.cell[entry]!;
-      for (let slot = cellStart[cell]!; slot < cellStart[cell + 1]!; slot++) {
-        const k = component[slot]!;
-        if (entriesOf[k] === end - first) alone[k * words + word]! |= bit;
-      }
-    }
-    for (let entry = first; entry < end; entry++) {
-      const cell = table.cell[entry]!;
-      for (let slot = cellStart[cell]!; slot < cellStart[cell + 1]!; slot++) entriesOf[component[slot]!] = 0;
-    }
+    const first = table.start[psu]!;
+    const end = table.start[psu + 1]!;
+    if (end > first) anyCell[word]! |= bit;
+    if (end > first + 1) severalCells[word]! |= bit;
+    for (let entry = first; entry < end; entry++) present[table.cell[entry]! * words + word]! |= bit;
   }
-  const sets = terms.map(([whole, away]) => {
-    const set = present.slice(whole!.component * words, (whole!.component + 1) * words);
-    if (away !== undefined) {
-      const removed = alone.subarray(away.component * words, (away.component + 1) * words);
-      for (let word = 0; word < words; word++) set[word]! &= ~removed[word]!;
+  return (target) => {
+    const set = new Uint32Array(words);
+    const left = target.cells.length === cells - 1 ? cellLeftOut(target, cells) : null;
+    if (left !== null) {
+      // Everyone but one cell is absent only where that cell is alone.
+      for (let word = 0; word < words; word++)
+        set[word] = severalCells[word]! | (anyCell[word]! & ~present[left * words + word]!);
+      return set;
+    }
+    for (const cell of target.cells) {
+      for (let word = 0; word < words; word++) set[word]! |= present[cell * words + word]!;
     }
     return set;
-  });
-  return {
-    psusOf: (target) => sets[target]!,
-    psusOfEither: (target, other) => {
-      const second = sets[other]!;
-      return sets[target]!.map((word, index) => word | second[index]!);
-    },
   };
+}
+
+function cellLeftOut(target: Target, cells: number): number | null {
+  const inside = new Uint8Array(cells);
+  for (const cell of target.cells) inside[cell] = 1;
+  const missing = inside.indexOf(0);
+  return inside.indexOf(0, missing + 1) === -1 ? missing : null;
+}
+
+/** PSUs in either set. */
+export function eitherOf(left: Uint32Array, right: Uint32Array): Uint32Array {
+  return left.map((word, index) => word | right[index]!);
 }
 
 /** PSUs in a set, and strata that hold any of them. Their difference is the degrees of freedom (Korn & Graubard 1999). */
@@ -65,14 +53,15 @@ export function countUnits(set: Uint32Array, stratumStart: Uint32Array): { psus:
   let psus = 0;
   let strata = 0;
   let stratum = 0;
-  let latestStratum = -1;
+  let nextStratum = 0; // first PSU past the stratum counted last
   for (let word = 0; word < set.length; word++) {
     for (let rest = set[word]!; rest !== 0; rest &= rest - 1) {
       const psu = word * 32 + 31 - Math.clz32(rest & -rest);
       psus++;
+      if (psu < nextStratum) continue;
       while (stratumStart[stratum + 1]! <= psu) stratum++;
-      if (stratum !== latestStratum) strata++;
-      latestStratum = stratum;
+      nextStratum = stratumStart[stratum + 1]!;
+      strata++;
     }
   }
   return { psus, strata };

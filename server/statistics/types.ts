@@ -1,5 +1,3 @@
-import type { Design } from "../../shared/contracts/design.ts";
-
 /**
  * A release's respondents in layout order: by stratum, then PSU, so that each PSU is one run of rows.
  * Typed arrays may lie over SharedArrayBuffers.
@@ -11,7 +9,8 @@ export interface Sample {
   psuStart: Uint32Array;
   /** First PSU of each stratum, and one past the last PSU. */
   stratumStart: Uint32Array;
-  lonely: Design["lonely"];
+  /** What a stratum with a single PSU adds to a variance; a release declares it in its design. */
+  lonely: "centred" | "certainty" | "average" | "refuse";
   /** Population number of first-stage units of each stratum (n_h/N_h is the sampling fraction); null: drawn with replacement. */
   stratumPopulation: Float64Array | null;
   /** Second stage, where both stages' sizes are declared; null otherwise. */

@@ -48,6 +48,9 @@ export type CodebookView = z.infer<typeof CodebookView>;
 export const VariableChange = z.strictObject({
   label: z.string().trim().max(400).optional(),
   kind: VariableKind.optional(),
-  categories: z.array(z.strictObject({ code: Code, label: z.string().trim().max(400), isMissing: z.boolean() })).max(5000).optional(),
+  categories: z
+    .array(z.strictObject({ code: Code, label: z.string().trim().max(400), isMissing: z.boolean() }))
+    .max(5000)
+    .optional(),
 });
 export type VariableChange = z.infer<typeof VariableChange>;

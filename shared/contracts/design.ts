@@ -16,7 +16,10 @@ export const ReplicateInput = z.strictObject({
   /** The a in a·Σ aᵣ(θᵣ − θ₀)²; null takes the method's own. */
   scale: z.number().positive().nullable().default(null),
   /** The aᵣ, one for all or one for each; null is 1. */
-  replicateScales: z.union([z.number().nonnegative(), z.array(z.number().nonnegative()).min(1).max(5000)]).nullable().default(null),
+  replicateScales: z
+    .union([z.number().nonnegative(), z.array(z.number().nonnegative()).min(1).max(5000)])
+    .nullable()
+    .default(null),
   /** Deviations from the full-sample estimate (true) or from the replicates' mean (false). */
   mse: z.boolean().default(true),
   /** Null takes replicates − 1. */
@@ -38,11 +41,17 @@ export const DesignInput = z.strictObject({
   weight: VariableName.nullable().default(null),
   strata: VariableName.nullable().default(null),
   /** One name, or one for each stage from the first on. */
-  psu: z.union([VariableName, z.array(VariableName).min(1).max(2)]).nullable().default(null),
+  psu: z
+    .union([VariableName, z.array(VariableName).min(1).max(2)])
+    .nullable()
+    .default(null),
   /** False: the same PSU label in two strata means two PSUs. True: labels are unique, so the same label in two strata is a fault. */
   psuLabelsAreUnique: z.boolean().default(false),
   /** Population size of each stage's stratum or PSU, for the finite population correction. */
-  populationSize: z.union([VariableName, z.array(VariableName).min(1).max(2)]).nullable().default(null),
+  populationSize: z
+    .union([VariableName, z.array(VariableName).min(1).max(2)])
+    .nullable()
+    .default(null),
   lonely: LonelyRule.default("centred"),
   replicates: ReplicateInput.nullable().default(null),
   minimums: DisclosureMinimums.default({ respondents: 10, affected: 3, unaffected: 3 }),

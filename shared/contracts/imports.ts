@@ -20,7 +20,9 @@ export const ImportProblem = z.strictObject({
   message: z.string(),
   count: z.number().int(),
   /** The first few places. `line` counts from 1 with the header as line 1; `column` is a variable's name, or a position counted from 1 where no name is known. */
-  first: z.array(z.strictObject({ line: z.number().int().nullable(), column: z.string().nullable(), value: z.string().nullable() })),
+  first: z.array(
+    z.strictObject({ line: z.number().int().nullable(), column: z.string().nullable(), value: z.string().nullable() }),
+  ),
 });
 export type ImportProblem = z.infer<typeof ImportProblem>;
 

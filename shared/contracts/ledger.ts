@@ -2,13 +2,31 @@ import { z } from "zod";
 
 /** What was done: dotted `thing.act`. */
 export const LEDGER_ACTIONS = [
-  "session.started", "session.refused", "session.ended",
-  "person.added", "person.changed", "person.deactivated", "person.reactivated", "person.linkMade", "person.passwordSet",
-  "survey.created", "survey.changed", "survey.stewardsChanged",
-  "import.started", "import.finished", "import.failed", "import.cancelled",
-  "codebook.changed", "design.declared", "release.published", "release.removed",
-  "grant.given", "grant.revoked",
-  "question.asked", "table.downloaded", "access.refused",
+  "session.started",
+  "session.refused",
+  "session.ended",
+  "person.added",
+  "person.changed",
+  "person.deactivated",
+  "person.reactivated",
+  "person.linkMade",
+  "person.passwordSet",
+  "survey.created",
+  "survey.changed",
+  "survey.stewardsChanged",
+  "import.started",
+  "import.finished",
+  "import.failed",
+  "import.cancelled",
+  "codebook.changed",
+  "design.declared",
+  "release.published",
+  "release.removed",
+  "grant.given",
+  "grant.revoked",
+  "question.asked",
+  "table.downloaded",
+  "access.refused",
 ] as const;
 export const LedgerAction = z.enum(LEDGER_ACTIONS);
 export type LedgerAction = z.infer<typeof LedgerAction>;

@@ -51,7 +51,11 @@ export const Question = z
       context.addIssue({ code: "custom", path: ["down"], message: "Each variable can split the table only once." });
     }
     if (question.comparison.kind === "group" && !names.includes(question.comparison.breakdown)) {
-      context.addIssue({ code: "custom", path: ["comparison", "breakdown"], message: "Compare with a group of one of the table's own breakdowns." });
+      context.addIssue({
+        code: "custom",
+        path: ["comparison", "breakdown"],
+        message: "Compare with a group of one of the table's own breakdowns.",
+      });
     }
   });
 export type QuestionInput = z.input<typeof Question>;

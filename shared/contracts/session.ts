@@ -5,7 +5,10 @@ import { Permissions, Role } from "../roles.ts";
 export const PASSWORD_MINIMUM_LENGTH = 15;
 
 /** `POST /api/session`. */
-export const SignInInput = z.strictObject({ email: z.email().max(254), password: z.string().min(1).max(1024) });
+export const SignInInput = z.strictObject({
+  email: z.email("Give your e-mail address.").max(254),
+  password: z.string().min(1, "Give your password.").max(1024),
+});
 export type SignInInput = z.infer<typeof SignInInput>;
 
 /** A password as a person may choose it: any characters, no rules of composition. */
@@ -23,14 +26,15 @@ export const SignInLinkView = z.strictObject({ name: z.string(), email: z.string
 export type SignInLinkView = z.infer<typeof SignInLinkView>;
 
 /** `PUT /api/account/password`. Other sessions of the person end. */
-export const ChangePasswordInput = z.strictObject({ current: z.string().min(1).max(1024), password: NewPassword });
+export const ChangePasswordInput = z.strictObject({
+  current: z.string().min(1, "Give your present password.").max(1024),
+  password: NewPassword,
+});
 export type ChangePasswordInput = z.infer<typeof ChangePasswordInput>;
 
 /** `GET /api/session`; `person` is null when nobody is signed in. Send `csrfToken` as `x-csrf-token` with every change. */
 export const SessionView = z.strictObject({
-  person: z
-    .strictObject({ id: z.uuid(), name: z.string(), email: z.string(), roles: z.array(Role) })
-    .nullable(),
+  person: z.strictObject({ id: z.uuid(), name: z.string(), email: z.string(), roles: z.array(Role) }).nullable(),
   permissions: Permissions,
   csrfToken: z.string(),
 });

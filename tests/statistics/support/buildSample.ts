@@ -45,8 +45,8 @@ export function buildSample(
   keyed.forEach((current, index) => {
     const before = keyed[index - 1];
     const newStratum = before?.stratum !== current.stratum;
-    const newPsu = newStratum || before?.psu !== current.psu;
-    const newUnit = newPsu || before?.unit !== current.unit;
+    const newPsu = newStratum || before.psu !== current.psu;
+    const newUnit = newPsu || before.unit !== current.unit;
     if (newStratum) {
       stratumStart.push(psuStart.length);
       stratumPopulation.push(current.row.stratumPopulation ?? NaN);
