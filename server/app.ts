@@ -18,8 +18,10 @@ import { peopleRoutes } from "./routes/people.ts";
 import { questionRoutes } from "./routes/questions.ts";
 import { releaseRoutes } from "./routes/releases.ts";
 import { sessionRoutes } from "./routes/session.ts";
+import type { ColumnCache } from "./microdata/columnCache.ts";
 import type { Imports } from "./microdata/imports.ts";
 import type { Questions } from "./questions/questions.ts";
+import type { Designs } from "./services/design.ts";
 
 /** What the routes work with; made by `main.ts`, or by a test. */
 export interface Services {
@@ -30,6 +32,8 @@ export interface Services {
   sessionSecret: string;
   signInLimits: SignInLimits;
   imports: Imports;
+  designs: Designs;
+  columns: ColumnCache;
   questions: Questions;
 }
 

@@ -6,9 +6,13 @@ import path from "node:path";
 import type { Sequelize } from "sequelize";
 import { createApp, type Services } from "./app.ts";
 import type { Config } from "./config.ts";
+import { ColumnCache } from "./microdata/columnCache.ts";
+import { DatabaseStore } from "./microdata/databaseStore.ts";
 import { createImports } from "./microdata/imports.ts";
+import { SIGN_IN_LIMITS } from "./middleware/limits.ts";
 import type { Logger } from "./middleware/requestLog.ts";
 import { createQuestions } from "./questions/questions.ts";
+import { createDesigns } from "./services/design.ts";
 
 /** The key that signs session cookies: given, or made once and kept in the data folder. */
 async function sessionSecret(config: Config): Promise<string> {
@@ -36,13 +40,18 @@ export async function startServer(parts: {
 }): Promise<RunningServer> {
   const { config, database, logger } = parts;
   const imports = await createImports({ config, sequelize: database.sequelize, databaseUrl: database.url, logger });
-  const questions = createQuestions({ config, sequelize: database.sequelize });
+  const columns = new ColumnCache(new DatabaseStore(), config.columnCacheBytes);
+  const designs = createDesigns({ config, sequelize: database.sequelize, columns });
+  const questions = createQuestions({ config, columns });
   const services: Services = {
     config,
     sequelize: database.sequelize,
     logger,
     sessionSecret: await sessionSecret(config),
+    signInLimits: SIGN_IN_LIMITS,
     imports,
+    designs,
+    columns,
     questions,
   };
   const server = http.createServer(createApp(services));
@@ -60,6 +69,7 @@ export async function startServer(parts: {
     setTimeout(() => server.closeAllConnections(), 3000).unref();
     await closed;
     await imports.close();
+    await designs.close();
     await questions.close();
   };
   return { services, port, close };

@@ -8,7 +8,7 @@ export type LonelyRule = z.infer<typeof LonelyRule>;
 /** Replicate weights given with the data instead of strata and PSUs. */
 export const ReplicateMethod = z.enum(["BRR", "Fay", "JK1", "JKn", "bootstrap", "other"]);
 export const ReplicateInput = z.strictObject({
-  /** First and last column, such as `repwt1–repwt80` (en dash, hyphen or "to"), or a regular expression between slashes. */
+  /** First and last column, such as `repwt1–repwt80` (en dash, hyphen or "to"), or a stem with an asterisk, such as `repwt*`. */
   pattern: z.string().trim().min(1).max(200),
   method: ReplicateMethod,
   /** Fay's factor, 0 to below 1; only for Fay. */

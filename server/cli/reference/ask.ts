@@ -53,7 +53,14 @@ async function codebookOf({ data, design, query }: ReferenceCase, folder: string
   return Papa.unparse(lines, { columns: ["variable", "label", "kind", "code", "category label", "missing"] });
 }
 
-function designOf({ design }: ReferenceCase): Design {
+/** First and last of the columns that a case's regular expression means. */
+function replicateRange(pattern: string, variables: readonly CodebookVariable[]): string {
+  const names = variables.map(({ name }) => name).filter((name) => new RegExp(pattern).test(name));
+  names.sort((a, b) => a.localeCompare(b, "en", { numeric: true }));
+  return `${names[0] ?? ""}–${names.at(-1) ?? ""}`;
+}
+
+function designOf({ design }: ReferenceCase, variables: readonly CodebookVariable[]): Design {
   const method =
     (["BRR", "Fay", "JK1", "JKn", "bootstrap"] as const).find((name) => design.replicates?.method.includes(name)) ?? "other";
   const single = (names: string | string[] | undefined) => (names === undefined ? null : names);
@@ -65,7 +72,7 @@ function designOf({ design }: ReferenceCase): Design {
     lonely: design.lonely ?? "centred",
     replicates: design.replicates
       ? {
-          pattern: `/${design.replicates.pattern}/`,
+          pattern: replicateRange(design.replicates.pattern, variables),
           method,
           scale: design.replicates.scale,
           replicateScales: design.replicates.rscales,
@@ -89,7 +96,7 @@ export async function bringIn(reference: ReferenceCase, folder: string): Promise
     const signal = new AbortController().signal;
     const result = await importFiles({ microdataPath: path.join(folder, reference.data), codebookPath, signal }, store);
     if (!("respondents" in result)) throw new Error(result.problems.map((problem) => problem.message).join(" "));
-    store.setDesign(designOf(reference));
+    store.declare(designOf(reference, result.variables), result.variables, result.respondents);
     const columns = new ColumnCache(store, CACHE_BYTES);
     return {
       variables: result.variables,
