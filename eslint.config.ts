@@ -21,7 +21,7 @@ export default defineConfig(
     rules: {
       "max-lines": ["error", { max: 350, skipBlankLines: true, skipComments: true }],
       "@typescript-eslint/restrict-template-expressions": ["error", { allowNumber: true }],
-      "@typescript-eslint/no-confusing-void-expression": ["error", { ignoreArrowShorthand: true }],
+      "@typescript-eslint/no-confusing-void-expression": ["error", { ignoreArrowShorthand: true, ignoreVoidReturningFunctions: true }],
       // Indexing under noUncheckedIndexedAccess, in loops whose bounds prove it.
       "@typescript-eslint/no-non-null-assertion": "off",
       "@typescript-eslint/no-unnecessary-condition": ["error", { allowConstantLoopConditions: true }],

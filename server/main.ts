@@ -29,7 +29,7 @@ export interface RunningServer {
   services: Services;
   port: number;
   /** Takes no new requests, lets running ones end, ends the workers. The database stays. */
-  close(): Promise<void>;
+  close: () => Promise<void>;
 }
 
 /** Builds the services over an open, migrated database and listens. */

@@ -91,7 +91,7 @@ export async function readCodebook(path: string, problems: ProblemLog, signal: A
       else addCategory(entries, row, line, report);
     });
   }
-  if (entries.size === 0 && !problems.hasErrors)
+  if (entries.size === 0 && !problems.hasErrors())
     problems.stop({
       kind: "codebook-empty",
       file: "codebook",

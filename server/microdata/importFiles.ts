@@ -1,10 +1,10 @@
 import { stat } from "node:fs/promises";
 import type { CodebookEntry, ImportedVariable } from "./codebook.ts";
 import { readCodebook } from "./codebookCsv.ts";
-import { CELL_LIMIT, COLUMN_LIMIT, readRecords, type Delimiter } from "./csvRecords.ts";
+import { CELL_LIMIT, readRecords, type Delimiter } from "./csvRecords.ts";
 import { ColumnEncoder } from "./encode.ts";
+import { matchCodebook, readHeader } from "./header.ts";
 import { ColumnGuess } from "./infer.ts";
-import { parseNumber } from "./numbers.ts";
 import { ProblemLog, UnreadableFile, type ImportProblem } from "./problems.ts";
 import { sha256, type SegmentSink } from "./segments.ts";
 
@@ -28,40 +28,11 @@ export type ImportOutcome =
   | { variables: ImportedVariable[]; respondents: number; checksum: string; problems: ImportProblem[] }
   | { problems: ImportProblem[] };
 
-const NAME_LIMIT = 64;
 const DISTINCT_LIMIT = 100_000;
 /** Distinct values kept over all columns together, so that many columns don't take more memory than a few. */
 const DISTINCT_BUDGET = 2_000_000;
 
 const file = "microdata";
-
-function readHeader(header: readonly string[], problems: ProblemLog): string[] {
-  const names = header.map((name) => name.trim());
-  if (names.length > COLUMN_LIMIT)
-    problems.stop({ kind: "too-many-columns", file, message: `The file has more than ${COLUMN_LIMIT} columns.` }, { line: 1 });
-  if (names.every((name) => name === ""))
-    problems.stop({ kind: "no-header", file, message: "The first line is blank. It must name the variables." }, { line: 1 });
-  if (names.every((name) => parseNumber(name, true) !== null))
-    problems.stop(
-      {
-        kind: "no-header",
-        file,
-        message: "The first line holds numbers, not names. Put a line with the variables' names first.",
-      },
-      { line: 1, value: names.join(", ") },
-    );
-  const seen = new Set<string>();
-  names.forEach((name, i) => {
-    const place = { line: 1, column: String(i + 1), value: name };
-    const report = (kind: string, message: string) => problems.add({ kind, severity: "error", file, message }, place);
-    if (name === "") report("column-without-name", "A column has no name. Name every column in the first line.");
-    else if (name.length > NAME_LIMIT) report("column-name-too-long", `A variable's name has at most ${NAME_LIMIT} characters.`);
-    else if (seen.has(name)) report("duplicate-column", "Two columns have the same name. Rename one.");
-    seen.add(name);
-  });
-  if (problems.hasErrors) throw new UnreadableFile();
-  return names;
-}
 
 /** Reads the microdata once: the header to `onHeader`, each sound row to `onRow`. Rows of another length are noted. */
 async function readRows(
@@ -146,36 +117,6 @@ async function guess(
   return entries;
 }
 
-/** Codebook entries of every column, by name, checked against the header. */
-function match(
-  names: readonly string[],
-  codebook: readonly CodebookEntry[] | null,
-  guesses: ReadonlyMap<string, CodebookEntry>,
-  problems: ProblemLog,
-): CodebookEntry[] {
-  const inFile = new Set(names);
-  const byName = new Map((codebook ?? []).map((entry) => [entry.name, entry]));
-  const absent = [...byName.keys()].filter((name) => !inFile.has(name));
-  for (const name of absent) {
-    const all = absent.length === byName.size;
-    const message = all
-      ? "None of the codebook's variables is in the microdata: these are files of different surveys."
-      : "A variable of the codebook isn't in the microdata. Correct its name in one of the files, or take it out of the codebook.";
-    problems.add(
-      { kind: all ? "other-codebook" : "variable-not-in-data", severity: "error", file: "codebook", message },
-      { line: null, column: name },
-    );
-  }
-  return names.map((name) => {
-    const entry = byName.get(name);
-    if (!entry && codebook) {
-      const message = "A column isn't in the codebook. Its kind was guessed from its values; check it on the codebook page.";
-      problems.add({ kind: "column-not-in-codebook", severity: "warning", file, message }, { line: 1, column: name });
-    }
-    return entry ?? guesses.get(name) ?? { name, label: "", kind: "text", categories: [] };
-  });
-}
-
 /**
  * Reads microdata (CSV) with or without a codebook, checks every cell, and hands the encoded columns to `sink` as they are made.
  * Without a codebook, or for columns it leaves out, the microdata are read twice: first to guess the kinds.
@@ -187,7 +128,7 @@ export async function importFiles(input: ImportInput, sink: SegmentSink): Promis
   const problems = new ProblemLog();
   try {
     const imported = await bringIn(input, sink, problems);
-    return problems.hasErrors ? { problems: problems.list() } : { ...imported, problems: problems.list() };
+    return problems.hasErrors() ? { problems: problems.list() } : { ...imported, problems: problems.list() };
   } catch (error) {
     if (error instanceof UnreadableFile) return { problems: problems.list() };
     throw error;
@@ -201,7 +142,7 @@ async function bringIn(
 ): Promise<Omit<Extract<ImportOutcome, { respondents: number }>, "problems">> {
   const { size } = await stat(input.microdataPath);
   const codebook = input.codebookPath === null ? null : await readCodebook(input.codebookPath, problems, input.signal);
-  if (problems.hasErrors) throw new UnreadableFile();
+  if (problems.hasErrors()) throw new UnreadableFile();
   const names = await readNames(input, problems);
   const described = new Set((codebook ?? []).map(({ name }) => name));
   const needsGuess = names.some((name) => !described.has(name));
@@ -216,9 +157,9 @@ async function bringIn(
     input.onProgress?.({ ...progress });
   };
   const guesses = needsGuess ? await guess(input, problems, described, onBytes) : new Map<string, CodebookEntry>();
-  if (problems.hasErrors) throw new UnreadableFile();
-  const entries = match(names, codebook, guesses, problems);
-  if (problems.hasErrors) throw new UnreadableFile();
+  if (problems.hasErrors()) throw new UnreadableFile();
+  const entries = matchCodebook(names, codebook, guesses, problems);
+  if (problems.hasErrors()) throw new UnreadableFile();
   progress.stage = "Reading and checking";
   let encoders: ColumnEncoder[] = [];
   const checksums: string[][] = names.map(() => []);
@@ -229,7 +170,7 @@ async function bringIn(
       if (!segment) continue;
       checksums[i]!.push(segment.checksum);
       // Once something is wrong nothing will be kept: go on checking only.
-      if (!problems.hasErrors) await sink.put(encoder.id, segments, segment);
+      if (!problems.hasErrors()) await sink.put(encoder.id, segments, segment);
     }
     segments += 1;
   };
@@ -252,7 +193,7 @@ async function bringIn(
     },
   );
   await flush();
-  if (progress.rows === 0 && !problems.hasErrors)
+  if (progress.rows === 0 && !problems.hasErrors())
     problems.stop(
       { kind: "no-rows", file, message: "The file has a header line and no rows. Choose one with microdata." },
       { line: 1 },

@@ -62,8 +62,9 @@ const isOlder = async (file: string, limitMs: number) => {
 
 /** Gives an import's file a name that says whose it is, so that files of no import can be swept away. */
 async function claim(file: string, claimed: string): Promise<string> {
-  await rename(file, claimed).catch(async (error: NodeJS.ErrnoException) => {
-    if (error.code !== "EXDEV") throw error;
+  await rename(file, claimed).catch(async (error: unknown) => {
+    const isOtherDisk = error instanceof Error && "code" in error && error.code === "EXDEV";
+    if (!isOtherDisk) throw error;
     await copyFile(file, claimed);
     await rm(file);
   });

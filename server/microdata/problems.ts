@@ -60,7 +60,8 @@ export class ProblemLog {
     throw new UnreadableFile();
   }
 
-  get hasErrors(): boolean {
+  /** Whether something was noted that makes the files unfit. */
+  hasErrors(): boolean {
     return this.#errors > 0;
   }
 

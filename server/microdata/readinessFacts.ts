@@ -3,6 +3,8 @@ import type { ReadinessFinding, ReadinessView } from "../../shared/contracts/rea
 import { isUnlabelled } from "./columns.ts";
 import type { DesignData } from "./designData.ts";
 import type { Labels, Layout } from "./layout.ts";
+import { fault, remark } from "./findings.ts";
+import { populationFindings } from "./populationFindings.ts";
 import { weightSpread } from "./weightSpread.ts";
 
 /** What a release's checks find in its design's variables. */
@@ -15,21 +17,6 @@ export type ReadinessFacts = Pick<
 const FEW_DEGREES = 8;
 /** Common practice, no source: past this the weights alone more than halve what the sample tells. */
 const HEAVY_KISH = 2.5;
-
-const fault = (kind: string, message: string, remedy: string, count: number | null): ReadinessFinding => ({
-  kind,
-  severity: "fault",
-  message,
-  remedy,
-  count,
-});
-const remark = (kind: string, message: string, count: number | null): ReadinessFinding => ({
-  kind,
-  severity: "remark",
-  message,
-  remedy: null,
-  count,
-});
 
 const countWhere = (rows: number, test: (row: number) => boolean) => {
   let count = 0;
@@ -98,60 +85,6 @@ function sharedPsus(strata: Labels, psus: Labels): number {
     else if (known !== stratum) shared.add(psu);
   });
   return shared.size;
-}
-
-/** Whether sizes of a stage are there, agree within a unit, and are no smaller than what was drawn. */
-function populationFindings(
-  sizes: Float64Array,
-  starts: ArrayLike<number>,
-  rowsOf: ArrayLike<number>,
-  order: Uint32Array,
-  name: string,
-  unit: string,
-): ReadinessFinding[] {
-  let missing = 0;
-  let varies = 0;
-  let small = 0;
-  for (let i = 0; i + 1 < starts.length; i++) {
-    const [from, to] = [rowsOf[starts[i]!]!, rowsOf[starts[i + 1]!]!];
-    const size = sizes[order[from]!]!;
-    if (Number.isNaN(size)) missing += 1;
-    else {
-      let agrees = true;
-      for (let place = from; place < to && agrees; place++) agrees = sizes[order[place]!] === size;
-      if (!agrees) varies += 1;
-      if (size < starts[i + 1]! - starts[i]!) small += 1;
-    }
-  }
-  const findings: ReadinessFinding[] = [];
-  if (missing > 0)
-    findings.push(
-      fault(
-        "population-size-missing",
-        `“${name}” gives no population size for ${missing} ${unit}.`,
-        "Give every respondent the size, or take the correction out.",
-        missing,
-      ),
-    );
-  if (varies > 0)
-    findings.push(
-      fault(
-        "population-size-varies",
-        `“${name}” differs within ${varies} ${unit}.`,
-        "The size must be the same for everyone in it. Correct the variable or choose another.",
-        varies,
-      ),
-    );
-  if (small > 0)
-    findings.push(
-      fault(
-        "population-size-small",
-        `“${name}” is smaller than the number drawn in ${small} ${unit}.`,
-        "A population can't be smaller than its sample: the variable may hold sampling fractions. Choose the one that holds counts.",
-        small,
-      ),
-    );
-  return findings;
 }
 
 function lonelyFindings(design: Design, strata: number, lonely: number): ReadinessFinding[] {
@@ -282,7 +215,7 @@ function countedDegrees(weight: Float64Array | null, { order, psuStart, stratumS
   for (let h = 0; h + 1 < stratumStart.length; h++) {
     let inStratum = 0;
     for (let psu = stratumStart[h]!; psu < stratumStart[h + 1]!; psu++) {
-      const isCounted = weight === null || order.subarray(psuStart[psu]!, psuStart[psu + 1]!).some((row) => weight[row]! > 0);
+      const isCounted = weight === null || order.subarray(psuStart[psu], psuStart[psu + 1]).some((row) => weight[row]! > 0);
       if (isCounted) inStratum += 1;
     }
     psus += inStratum;

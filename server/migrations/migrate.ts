@@ -8,7 +8,7 @@ import { ledger } from "./0004Ledger.ts";
 const MIGRATIONS = [people, holdings, microdata, ledger];
 
 /** The migrations of this version over one database; `up()` brings it up to date, `down()` takes the newest back. */
-export function migrations(sequelize: Sequelize): Umzug<object> {
+export function migrations(sequelize: Sequelize): Umzug {
   const run = async (statements: readonly string[]) => {
     for (const statement of statements) await sequelize.query(statement);
   };

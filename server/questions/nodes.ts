@@ -84,7 +84,7 @@ function firstOpen(key: readonly (number | null)[], from: number, to: number): n
 }
 
 /** What each node is set against: another node, its complement in the whole, a fixed value, or nothing. */
-export type Against = { node: number } | "rest" | { fixed: number } | null;
+export type Against = { node: number } | "rest" | { fixedValue: number } | null;
 
 /**
  * The comparison of every node, in node order.
@@ -94,7 +94,7 @@ export function comparisonsOf(shape: TableShape, comparison: Comparison, groupAx
   const indexOf = new Map(shape.nodes.map((node, i) => [keyText(node.key), i]));
   return shape.nodes.map((node): Against => {
     if (comparison.kind === "none") return null;
-    if (comparison.kind === "target") return { fixed: comparison.value };
+    if (comparison.kind === "target") return { fixedValue: comparison.value };
     if (node.kind === "whole") return null;
     if (comparison.kind === "rest") return "rest";
     if (comparison.kind === "all") return { node: 0 };

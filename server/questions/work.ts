@@ -76,7 +76,7 @@ export async function answer(work: Work): Promise<Answer> {
       requests.push({ of: node, from: targets.length });
       targets.push({ cells: complement(shape.nodes[node]!.cells, assignment.cells) });
     } else {
-      requests.push({ of: node, from: "node" in reference ? reference.node : reference });
+      requests.push({ of: node, from: "node" in reference ? reference.node : { fixed: reference.fixedValue } });
     }
   });
   const isBinary = assignment.isBinary;

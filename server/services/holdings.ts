@@ -22,7 +22,7 @@ export async function releaseExtras(releaseIds: readonly string[]): Promise<Map<
     group: ["releaseId"],
   });
   const imports = await Import.findAll({ where, attributes: ["id", "releaseId"], order: [["startedAt", "ASC"]] });
-  const countOf = new Map(counts.map((row) => [row.releaseId, Number(row.position)]));
+  const countOf = new Map(counts.map((row) => [row.releaseId, row.position]));
   const importOf = new Map(imports.map((row) => [row.releaseId, row.id]));
   return new Map(releaseIds.map((id) => [id, { variables: countOf.get(id) ?? 0, importId: importOf.get(id) ?? null }]));
 }

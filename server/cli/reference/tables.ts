@@ -56,7 +56,7 @@ function checkCell(comparison: Comparison, what: string, node: AnsweredNode, exp
     estimate.affectedPeopleSe,
     expected.affectedPeopleSe,
     EXACT,
-    (estimate.affectedPeople ?? 0) * 1e-3,
+    estimate.affectedPeople * 1e-3,
   );
   comparison.number(`${what} estimate`, estimate.estimate, expected.estimate, EXACT);
   comparison.number(`${what} SE`, estimate.se, expected.se, EXACT);

@@ -84,6 +84,6 @@ export async function suppress(table: Table, minimums: DisclosureMinimums): Prom
     }
     const next = [...exposed].map((node) => nextAround(node, table, withheld)).find((node) => node !== null);
     if (next === undefined) return withheld;
-    withheld[next!] = "protects-another";
+    withheld[next] = "protects-another";
   }
 }
