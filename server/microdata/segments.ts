@@ -1,19 +1,5 @@
 import { createHash } from "node:crypto";
-import {
-  Field,
-  makeVector,
-  RecordBatch,
-  Schema,
-  Struct,
-  Table,
-  tableFromIPC,
-  tableToIPC,
-  Utf8,
-  vectorFromArray,
-  makeData,
-  type DataType,
-  type Vector,
-} from "apache-arrow";
+import { Field, makeVector, Schema, Table, tableFromIPC, tableToIPC, Utf8, vectorFromArray, type Vector } from "apache-arrow";
 
 /** Respondents in one segment. */
 export const SEGMENT_ROWS = 65_536;
@@ -56,15 +42,9 @@ export const missingOf = (encoding: Exclude<Encoding, "utf8">): number => MISSIN
 export const sha256 = (bytes: Uint8Array | string): string => createHash("sha256").update(bytes).digest("hex");
 
 function seal(encoding: Encoding, rowCount: number, vector: Vector): Segment {
-  const field = new Field(
-    "value",
-    vector.type as DataType,
-    false,
-    new Map(encoding === "utf8" ? [] : [["missing", String(MISSING[encoding])]]),
-  );
-  const schema = new Schema([field]);
-  const data = makeData({ type: new Struct([field]), length: rowCount, nullCount: 0, children: [vector.data[0]!] });
-  const bytes = tableToIPC(new Table(schema, [new RecordBatch(schema, data)]), "stream");
+  const metadata = new Map(encoding === "utf8" ? [] : [["missing", String(MISSING[encoding])]]);
+  const schema = new Schema([new Field("value", vector.type, false, metadata)]);
+  const bytes = tableToIPC(new Table(schema, { value: vector }), "stream");
   return { encoding, rowCount, bytes, checksum: sha256(bytes) };
 }
 
