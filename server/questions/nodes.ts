@@ -83,8 +83,11 @@ function firstOpen(key: readonly (number | null)[], from: number, to: number): n
   return null;
 }
 
-/** What each node is set against: another node, its complement in the whole, a fixed value, or nothing. */
-export type Against = { node: number } | "rest" | { fixedValue: number } | null;
+/**
+ * What each node is set against: another node, everyone in the table's groups, the others of them, a fixed value, or nothing.
+ * Respondents without a value of a breakdown are in none of the groups.
+ */
+export type Against = { node: number } | "rest" | "all" | { fixedValue: number } | null;
 
 /**
  * The comparison of every node, in node order.
@@ -97,7 +100,7 @@ export function comparisonsOf(shape: TableShape, comparison: Comparison, groupAx
     if (comparison.kind === "target") return { fixedValue: comparison.value };
     if (node.kind === "whole") return null;
     if (comparison.kind === "rest") return "rest";
-    if (comparison.kind === "all") return { node: 0 };
+    if (comparison.kind === "all") return "all";
     const own = node.key[groupAxis];
     if (own === null || own === undefined || own === groupValue) return null;
     const reference = indexOf.get(keyText(node.key.with(groupAxis, groupValue)));

@@ -9,6 +9,7 @@ import {
 } from "../statistics/estimate.ts";
 import type { Sample } from "../statistics/types.ts";
 import { assign, type Columns } from "./assign.ts";
+import { isTooFew, type Counts } from "./disclosure/counts.ts";
 import { suppress, type Withholding } from "./disclosure/suppress.ts";
 import { comparisonsOf, tableShape, type TableNode } from "./nodes.ts";
 import type { Plan } from "./plan.ts";
@@ -47,13 +48,14 @@ export interface Answer {
 /** Complements cost a list of base cells for each figure; past this many entries a table is refused. */
 const COMPLEMENT_LIMIT = 20_000_000;
 
-function complement(cells: Int32Array, total: number): Int32Array {
-  const isIn = new Uint8Array(total);
-  for (const cell of cells) isIn[cell] = 1;
-  const rest = new Int32Array(total - cells.length);
-  let filled = 0;
-  for (let cell = 0; cell < total; cell++) if (isIn[cell] === 0) rest[filled++] = cell;
-  return rest;
+/** Base cells of everyone in the table's groups, those without a value on some axis left out. */
+function groupedCells(nodes: readonly TableNode[]): Int32Array {
+  return Int32Array.from(new Set(nodes.filter(({ kind }) => kind === "cell").flatMap(({ cells }) => [...cells]))).sort();
+}
+
+function complement(cells: Int32Array, grouped: Int32Array): Int32Array {
+  const own = new Set(cells);
+  return grouped.filter((cell) => !own.has(cell));
 }
 
 /** Whether a question's complements fit; checked before the work is sent. */
@@ -68,13 +70,21 @@ export async function answer(work: Work): Promise<Answer> {
   const targets: Target[] = shape.nodes.map(({ cells }) => ({ cells }));
   const requests: ContrastRequest[] = [];
   const requestOf = new Map<number, number>();
+  const grouped = groupedCells(shape.nodes);
+  let everyone: number | null = null;
   const against = comparisonsOf(shape, work.options.comparison, work.groupAxis, work.groupValue);
   against.forEach((reference, node) => {
     if (reference === null) return;
     requestOf.set(node, requests.length);
     if (reference === "rest") {
       requests.push({ of: node, from: targets.length });
-      targets.push({ cells: complement(shape.nodes[node]!.cells, assignment.cells) });
+      targets.push({ cells: complement(shape.nodes[node]!.cells, grouped) });
+    } else if (reference === "all") {
+      if (everyone === null) {
+        everyone = targets.length;
+        targets.push({ cells: grouped });
+      }
+      requests.push({ of: node, from: everyone });
     } else {
       requests.push({ of: node, from: "node" in reference ? reference.node : { fixed: reference.fixedValue } });
     }
@@ -83,20 +93,24 @@ export async function answer(work: Work): Promise<Answer> {
   const { level, interval, difference } = work.options;
   const result = estimateTargets(work.sample, assignment, targets, requests, { level, interval, difference, isBinary });
   const estimates = result.targets.slice(0, shape.nodes.length);
-  const counts = estimates.map(({ respondents, affectedRespondents }) => ({
+  const countsOf = ({ respondents, affectedRespondents }: TargetEstimate): Counts => ({
     respondents,
     affected: isBinary ? affectedRespondents : null,
-  }));
+  });
+  const counts = estimates.map(countsOf);
   const withheld: Withholding[] =
     work.minimums === null
       ? counts.map(({ respondents }) => (respondents === 0 ? "empty" : null))
       : await suppress({ counts, lines: shape.lines }, work.minimums);
+  /** Whether what a figure is set against may not be shown: a withheld cell, or others too few by themselves. */
+  const isHidden = (from: ContrastRequest["from"]) => {
+    if (typeof from !== "number" || work.minimums === null) return false;
+    if (from < shape.nodes.length) return withheld[from] !== null;
+    return isTooFew(countsOf(result.targets[from]!), work.minimums);
+  };
   const nodes = shape.nodes.map(({ key, kind }, node): AnsweredNode => {
-    const reference = against[node];
-    const isReferenceHidden =
-      typeof reference === "object" && reference !== null && "node" in reference && withheld[reference.node] !== null;
     const request = requestOf.get(node);
-    const contrast = request === undefined || isReferenceHidden ? null : result.contrasts[request]!;
+    const contrast = request === undefined || isHidden(requests[request]!.from) ? null : result.contrasts[request]!;
     return { key, kind, estimate: estimates[node]!, withheld: withheld[node]!, contrast };
   });
   return { designDf: result.designDf, nodes };

@@ -62,7 +62,8 @@ export function compareSides(
   const ratio = q > 0 && p >= 0 ? p / q : null;
   const logRatioSe = ratio !== null && ratio > 0 ? root(variances.logRatio) : null;
   const ratioLimits = multiplied(ratio, logRatioSe, t);
-  const hasOdds = options.isBinary && q > 0 && q < 1 && p < 1;
+  // Of a mean that lies between 0 and 1 the odds are defined too, though few would ask for them.
+  const hasOdds = q > 0 && q < 1 && p >= 0 && p < 1;
   const oddsRatio = hasOdds ? p / (1 - p) / (q / (1 - q)) : null;
   const logOddsRatioSe = oddsRatio !== null && oddsRatio > 0 ? root(variances.logOddsRatio) : null;
   const oddsLimits = multiplied(oddsRatio, logOddsRatioSe, t);

@@ -102,7 +102,7 @@ export function estimateTargets(
   const compared = contrasts.map(({ of, from }): ContrastEstimate => {
     const side = sideOf(estimates[of]!);
     if (typeof from !== "number")
-      return compareSides(side, fixedSide(from.fixed), fixedVariances(side, isBinary), side.df, options);
+      return compareSides(side, fixedSide(from.fixed), fixedVariances(side), side.df, options);
     const units = countUnits(eitherOf(presence[of]!, presence[from]!), sample.stratumStart);
     const df = declaredDf ?? units.psus - units.strata;
     return compareSides(side, sideOf(estimates[from]!), moments.ofContrast(of, from), df, options);
@@ -165,13 +165,13 @@ function fixedSide(value: number): ContrastSide {
   return { estimate: value, variance: 0, respondents: 0, df: Infinity, isFixed: true };
 }
 
-function fixedVariances({ estimate: p, variance }: ContrastSide, isBinary: boolean): ContrastVariances {
+function fixedVariances({ estimate: p, variance }: ContrastSide): ContrastVariances {
   if (p === null || variance === null) return { difference: null, covariance: null, logRatio: null, logOddsRatio: null };
   return {
     difference: variance,
     covariance: 0,
     logRatio: p > 0 ? variance / p ** 2 : null,
-    logOddsRatio: isBinary && p > 0 && p < 1 ? variance / (p * (1 - p)) ** 2 : null,
+    logOddsRatio: p > 0 && p < 1 ? variance / (p * (1 - p)) ** 2 : null,
   };
 }
 

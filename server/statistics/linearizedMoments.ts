@@ -76,7 +76,7 @@ export function linearizedMoments(input: {
         const own = slopeP * slopeP * variance + slopeQ * slopeQ * other;
         return dropRounding(own - 2 * slopeP * slopeQ * covariance, own * 1e10);
       };
-      const odds = (1 - p) * p > 0 && (1 - q) * q > 0 && isBinary;
+      const odds = (1 - p) * p > 0 && (1 - q) * q > 0;
       return {
         difference: combine(1, 1),
         covariance,

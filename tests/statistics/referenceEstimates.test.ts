@@ -137,7 +137,6 @@ function checkComparisons(reference: ReferenceCase, comparisons: ExpectedCompari
     for (const [field, value] of Object.entries(expected)) {
       if (typeof value !== "number") continue;
       // Not offered: a mean has no odds. The one such case is of a count of visits that happens to average below 1.
-      if (!isBinary && /odds/i.test(field)) continue;
       const label = `${reference.id} ${JSON.stringify(expected.key)} ${field}`;
       const found = actual[field as keyof typeof actual];
       const isExact = [
