@@ -55,7 +55,7 @@ export function createApp(services: Services): Express {
   app.use("/api", importRoutes(services));
   app.use("/api", releaseRoutes(services));
   app.use("/api", questionRoutes(services));
-  app.use("/api", ledgerRoutes(services));
+  app.use("/api", ledgerRoutes());
   app.use("/api", notFound);
   app.use(serveClient());
   app.use(handleErrors(services.logger));

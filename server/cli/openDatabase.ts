@@ -10,7 +10,7 @@ export interface OpenDatabase {
   sequelize: Sequelize;
   url: string;
   /** Ends the connections, and the server where it is ours. */
-  close(): Promise<void>;
+  close: () => Promise<void>;
 }
 
 /**

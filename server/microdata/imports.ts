@@ -129,9 +129,11 @@ export async function createImports(parts: {
   }
 
   async function work(importId: string, request: ImportRequest): Promise<ImportEnd | null> {
-    const { actor, ...rest } = request;
+    // An actor may be a model of the database, which can't be posted to a thread.
+    const actor = { id: request.actor.id, name: request.actor.name };
+    const { surveyId, wave, microdataPath, codebookPath } = request;
     try {
-      const outcome = await pool.run({ databaseUrl, importId, actor, ...rest });
+      const outcome = await pool.run({ databaseUrl, importId, surveyId, wave, microdataPath, codebookPath, actor });
       if (outcome.kind === "failed") await end(importId, "failed", outcome.problems, actor);
       if (outcome.kind === "cancelled") await end(importId, "cancelled", [], actor);
       return outcome;

@@ -45,7 +45,10 @@ export function handleErrors(logger: Logger): ErrorRequestHandler {
   return (error: unknown, request, response, next) => {
     const problem = problemOf(error);
     if (problem.status >= 500) logger.error({ err: error, path: request.path }, "request failed");
-    if (response.headersSent) { next(error); return; }
+    if (response.headersSent) {
+      next(error);
+      return;
+    }
     response.status(problem.status).type("application/problem+json").send(JSON.stringify(problem));
   };
 }

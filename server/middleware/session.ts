@@ -32,7 +32,10 @@ export function issueCsrfToken(request: Request, response: Response): string {
 function checkOrigin(publicUrl: string): RequestHandler {
   return (request, _response, next) => {
     const isAnonymousChange = request.method === "POST" && BEFORE_SIGN_IN.some((path) => path.test(request.path));
-    if (!isAnonymousChange) return next();
+    if (!isAnonymousChange) {
+      next();
+      return;
+    }
     const origin = request.get("origin");
     const isForeign =
       request.get("sec-fetch-site") === "cross-site" ||

@@ -1,6 +1,5 @@
 import { Router } from "express";
 import { LedgerQuery } from "../../shared/contracts/ledger.ts";
-import type { Services } from "../app.ts";
 import { currentReader, requirePerson } from "../middleware/signedIn.ts";
 import { parse } from "../parse.ts";
 import { ledgerCsv, presentLedgerLine } from "../presenters/ledger.ts";
@@ -9,7 +8,7 @@ import { readLedger } from "../services/readLedger.ts";
 const DOWNLOAD_LIMIT = 50_000;
 
 /** What was done. */
-export function ledgerRoutes(_services: Services): Router {
+export function ledgerRoutes(): Router {
   const router = Router();
   router.get("/ledger", requirePerson, async (request, response) => {
     const { lines, next } = await readLedger(currentReader(request), parse(LedgerQuery, request.query));

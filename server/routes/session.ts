@@ -32,8 +32,10 @@ export function sessionRoutes({ sequelize, signInLimits }: Services): Router {
   /** Who the credentials belong to; null for nobody. */
   const authenticate = (...[request, response]: Parameters<RequestHandler>) =>
     new Promise<Person | null>((resolve, reject) => {
-      const finish = (error: unknown, person: unknown) =>
-        error ? reject(error as Error) : resolve(person instanceof Person ? person : null);
+      const finish = (error: unknown, person: unknown) => {
+        if (error) reject(error instanceof Error ? error : new Error("The sign-in check failed.", { cause: error }));
+        else resolve(person instanceof Person ? person : null);
+      };
       const handler = authenticator.authenticate("local", { session: false }, finish) as RequestHandler;
       void handler(request, response, reject);
     });

@@ -13,12 +13,16 @@ export async function findByPassword(email: string, password: string): Promise<P
   return isRight ? person : null;
 }
 
-const regenerate = (request: Request) =>
-  new Promise<void>((resolve, reject) =>
-    request.session.regenerate((error: unknown) => (error ? reject(error as Error) : resolve())),
-  );
-const save = (request: Request) =>
-  new Promise<void>((resolve, reject) => request.session.save((error: unknown) => (error ? reject(error as Error) : resolve())));
+/** A call of the session's own kind, with a callback, as a promise. */
+const promised = (call: (done: (error?: unknown) => void) => unknown) =>
+  new Promise<void>((resolve, reject) => {
+    call((error) => {
+      if (error === undefined || error === null) resolve();
+      else reject(error instanceof Error ? error : new Error("The session store failed.", { cause: error }));
+    });
+  });
+const regenerate = (request: Request) => promised((done) => request.session.regenerate(done));
+const save = (request: Request) => promised((done) => request.session.save(done));
 
 /** Starts a person's session under a new id, so that one planted before sign-in is worth nothing. */
 export async function startSession(request: Request, person: Person, sequelize: Sequelize): Promise<void> {
@@ -43,9 +47,7 @@ export async function noteRefusal(sequelize: Sequelize, email: string): Promise<
 
 /** Ends the request's session on the server. */
 export async function endSession(request: Request, actor: Actor, sequelize: Sequelize): Promise<void> {
-  await new Promise<void>((resolve, reject) =>
-    request.session.destroy((error: unknown) => (error ? reject(error as Error) : resolve())),
-  );
+  await promised((done) => request.session.destroy(done));
   if (!actor) return;
   await sequelize.transaction((transaction) =>
     record(transaction, actor, { action: "session.ended", subjectId: actor.id, summary: `${actor.name} signed out.` }),

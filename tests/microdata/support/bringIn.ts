@@ -20,7 +20,7 @@ export class KeptSegments {
 /** Brings texts (or bytes) in as files. */
 export async function bringIn(
   microdata: string | Uint8Array,
-  codebook: string | null = null,
+  codebook: string | Uint8Array | null = null,
 ): Promise<{ outcome: ImportOutcome; kept: KeptSegments }> {
   const folder = await mkdtemp(path.join(os.tmpdir(), "perhundred-import-"));
   try {
@@ -39,12 +39,12 @@ export async function bringIn(
 /** What was brought in, as a reader of the file would say it: by name, each row's code, number or text; null for missing. */
 export async function readBack(
   microdata: string | Uint8Array,
-  codebook: string | null = null,
+  codebook: string | Uint8Array | null = null,
 ): Promise<Record<string, (string | number | null)[]>> {
   const { outcome, kept } = await bringIn(microdata, codebook);
   if (!("respondents" in outcome)) throw new Error(JSON.stringify(outcome.problems));
   return Object.fromEntries(
-    outcome.variables.map((variable) => {
+    outcome.variables.map((variable): [string, (string | number | null)[]] => {
       const column = assembleColumn(variable.storage, kept.byVariable.get(variable.id) ?? [], outcome.respondents);
       if (variable.storage === "number")
         return [variable.name, Array.from(asNumbers(column, variable), (value) => (Number.isNaN(value) ? null : value))];
