@@ -154,6 +154,7 @@ export async function createImports(parts: {
         {
           id: randomUUID(),
           surveyId: request.surveyId,
+          releaseId: null,
           wave: request.wave,
           status: "queued",
           stage: "Waiting",
@@ -161,6 +162,7 @@ export async function createImports(parts: {
           startedBy: request.actor.id,
           startedAt: now,
           heartbeatAt: now,
+          endedAt: null,
         },
         { transaction },
       );
