@@ -1,17 +1,11 @@
-import { ColumnSegment, Layout as LayoutRow } from "../models/Column.ts";
+import { Layout as LayoutRow } from "../models/Column.ts";
 import { Release } from "../models/Release.ts";
 import { loadCodebook } from "../services/codebook.ts";
 import type { SegmentSource, StoredRelease } from "./columnCache.ts";
 import { layoutOf } from "./layoutParts.ts";
 import type { Layout } from "./layout.ts";
-import { sha256, type Encoding, type Segment } from "./segments.ts";
-
-/** Segments of one variable in order. */
-export async function readSegments(variableId: string): Promise<Segment[]> {
-  const rows = await ColumnSegment.findAll({ where: { variableId }, order: [["segment", "ASC"]], raw: true });
-  // The encoding is what this product wrote; decoding checks it against the bytes.
-  return rows.map(({ encoding, rowCount, bytes, checksum }) => ({ encoding: encoding as Encoding, rowCount, bytes, checksum }));
-}
+import { readSegments } from "./segmentRows.ts";
+import { sha256, type Segment } from "./segments.ts";
 
 /** Segments and layouts as MariaDB keeps them; the models must be connected. */
 export class DatabaseStore implements SegmentSource {

@@ -2,6 +2,8 @@ import type { Sequelize } from "sequelize";
 import type { VariableChange } from "../../shared/contracts/codebook.ts";
 import { AppError } from "../errors.ts";
 import { numberOfCode, type CodebookVariable } from "../microdata/codebook.ts";
+import { assembleColumn } from "../microdata/columns.ts";
+import { readSegments } from "../microdata/segmentRows.ts";
 import type { Release } from "../models/Release.ts";
 import { Category, Variable } from "../models/Variable.ts";
 import type { Reader } from "../policies/policy.ts";
@@ -64,6 +66,18 @@ function checkKind(variable: Variable, kind: NonNullable<VariableChange["kind"]>
     throw refuse("kind", "Name its categories first: a number without named codes has nothing to split by.");
 }
 
+/** Fills in how many respondents have each of these codes of a numeric variable. */
+async function countRespondents(release: Release, variable: Variable, categories: readonly Category[]): Promise<void> {
+  const { values } = assembleColumn(variable.storage, await readSegments(variable.id), release.respondents);
+  const byNumber = new Map(categories.map((category) => [numberOfCode(category.code), category]));
+  const counts = new Map<Category, number>();
+  for (const value of values) {
+    const category = byNumber.get(value);
+    if (category) counts.set(category, (counts.get(category) ?? 0) + 1);
+  }
+  for (const category of categories) category.set({ respondents: counts.get(category) ?? 0 });
+}
+
 /**
  * Changes a draft's variable. Categories not named keep what they have; a numeric variable may gain named codes.
  * @returns The variable as it is now. @throws {AppError} `invalid` where the change doesn't fit the column.
@@ -98,6 +112,7 @@ export async function changeVariable(
     }
   }
   if (change.kind) checkKind(variable, change.kind, categories);
+  if (added.length > 0) await countRespondents(release, variable, added);
   await sequelize.transaction(async (transaction) => {
     await variable.update({ label: change.label ?? variable.label, kind: change.kind ?? variable.kind }, { transaction });
     for (const category of categories) if (added.includes(category) || category.changed()) await category.save({ transaction });
