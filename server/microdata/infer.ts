@@ -7,6 +7,9 @@ const WHOLE_CATEGORIES = 20;
 const WORD_CATEGORIES = 200;
 const WORD_LENGTH = 100;
 
+/** Codes in the order a reader expects: numbers by value, then words. */
+const BY_CODE = new Intl.Collator("en", { numeric: true });
+
 /** Gathers what is in one column, in order to guess its kind. Distinct values are kept up to `limit`. */
 export class ColumnGuess {
   readonly #values = new Map<string, number>();
@@ -45,29 +48,24 @@ export class ColumnGuess {
   entry(name: string): CodebookEntry {
     const missing = [...this.#missingWords].sort().map((code) => ({ code, label: "", isMissing: true }));
     const isMissing = (code: string) => this.#missingWords.has(code);
-    const codes = [...this.#values.keys()].filter((code) => !isMissing(code)).sort(byCode);
-    const categorical: CodebookEntry = {
+    const codes = [...this.#values.keys()].filter((code) => !isMissing(code));
+    const categorical = (): CodebookEntry => ({
       name,
       label: "",
       kind: "categorical",
-      categories: [...codes.map((code) => ({ code, label: "", isMissing: false })), ...missing],
-    };
+      categories: [...codes.sort(BY_CODE.compare).map((code) => ({ code, label: "", isMissing: false })), ...missing],
+    });
     if (this.#words === 0) {
       const isCodeList = this.#isWhole && !this.#isOverLimit && codes.length <= WHOLE_CATEGORIES;
-      if (isCodeList && codes.length > 0 && new Set(codes.map(Number)).size === codes.length) return categorical;
+      if (isCodeList && codes.length > 0 && new Set(codes.map(Number)).size === codes.length) return categorical();
       return { name, label: "", kind: "numeric", categories: missing };
     }
     const isRepeated = this.#filled >= 2 * codes.length || this.#filled < 20;
     const isShort = !this.#isOverLimit && codes.length <= WORD_CATEGORIES && this.#longest <= WORD_LENGTH;
-    return isShort && isRepeated ? categorical : { name, label: "", kind: "text", categories: [] };
+    return isShort && isRepeated ? categorical() : { name, label: "", kind: "text", categories: [] };
   }
 
   get missingWords(): readonly string[] {
     return [...this.#missingWords];
   }
-}
-
-/** Codes in the order a reader expects: numbers by value, then words. */
-function byCode(a: string, b: string): number {
-  return a.localeCompare(b, "en", { numeric: true });
 }
