@@ -1,0 +1,29 @@
+import type { Table } from "../../../shared/contracts/tables.ts";
+import type { ReadingContext } from "../../../shared/reading.ts";
+import { comparisonWords, joinWords, outcomeWords, ruleWords, type NamedVariable } from "../../../shared/wording.ts";
+import { groupParts } from "./pivot.ts";
+
+/** Whom a cell is about: what the question asks of people, and what the cell's own row and column add. */
+function groupWords(table: Table, key: readonly (string | null)[], variables: readonly NamedVariable[]): string {
+  const { among } = table.question;
+  const conditions = among ? ("all" in among ? among.all : [among]).map((rule) => ruleWords(rule, variables)) : [];
+  const parts = groupParts(table, key).map(({ breakdown, value }) => `${breakdown}: ${value}`);
+  const all = [...conditions, ...parts];
+  return all.length > 0 ? `people with ${joinWords(all, "and")}` : "people";
+}
+
+/** What the sentences about a cell need to know. */
+export function readingContext(
+  table: Table,
+  key: readonly (string | null)[],
+  variables: readonly NamedVariable[],
+): ReadingContext {
+  const { outcome, comparison, down, across } = table.question;
+  return {
+    kind: table.measure,
+    group: groupWords(table, key, variables),
+    outcome: outcomeWords(outcome, variables),
+    comparison,
+    reference: comparisonWords(comparison, variables, [...down, ...across], table.measure === "mean"),
+  };
+}
