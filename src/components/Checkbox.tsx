@@ -1,6 +1,13 @@
 import { Check } from "lucide-react";
 import type { ReactNode } from "react";
-import { Checkbox as AriaCheckbox, CheckboxGroup as AriaCheckboxGroup, FieldError, Label, Text } from "react-aria-components";
+import {
+  CheckboxButton,
+  CheckboxField,
+  CheckboxGroup as AriaCheckboxGroup,
+  FieldError,
+  Label,
+  Text,
+} from "react-aria-components";
 import { fieldStyle } from "./fieldStyle.ts";
 
 export interface CheckboxProps {
@@ -16,18 +23,17 @@ export interface CheckboxProps {
 /** A box to tick, alone or in a group. */
 export function Checkbox({ children, ...props }: CheckboxProps) {
   return (
-    <AriaCheckbox
-      {...props}
-      className="group flex min-h-6 cursor-pointer items-start gap-2.5 data-[disabled]:cursor-default data-[disabled]:text-muted"
-    >
-      <span
-        aria-hidden="true"
-        className="mt-0.5 flex size-5 shrink-0 items-center justify-center rounded-xs border border-field bg-raised text-on-action group-hover:border-action group-data-[focus-visible]:outline-2 group-data-[focus-visible]:outline-offset-2 group-data-[focus-visible]:outline-action group-data-[selected]:border-action group-data-[selected]:bg-action"
-      >
-        <Check className="hidden size-4 stroke-3 group-data-[selected]:block" />
-      </span>
-      <span>{children}</span>
-    </AriaCheckbox>
+    <CheckboxField {...props}>
+      <CheckboxButton className="group flex min-h-6 cursor-pointer items-start gap-2.5 data-[disabled]:cursor-default data-[disabled]:text-muted">
+        <span
+          aria-hidden="true"
+          className="mt-0.5 flex size-5 shrink-0 items-center justify-center rounded-xs border border-field bg-raised text-on-action group-hover:border-action group-data-[focus-visible]:outline-2 group-data-[focus-visible]:outline-offset-2 group-data-[focus-visible]:outline-action group-data-[selected]:border-action group-data-[selected]:bg-action"
+        >
+          <Check className="hidden size-4 stroke-3 group-data-[selected]:block" />
+        </span>
+        <span>{children}</span>
+      </CheckboxButton>
+    </CheckboxField>
   );
 }
 

@@ -1,12 +1,11 @@
-import { useTable, type ColumnDef, type RowData, type SortingState } from "@tanstack/react-table";
+import { useTable, type RowData, type SortingState } from "@tanstack/react-table";
 import { ArrowDown, ArrowUp } from "lucide-react";
-import { features, type Features } from "./tableFeatures.ts";
+import { features, type Columns } from "./tableFeatures.ts";
 
 export interface DataTableProps<Row extends RowData> {
   /** What the table holds; read out, and the name of the region that scrolls. */
   caption: string;
-  // The value type of each column differs, and the table only passes it on.
-  columns: readonly ColumnDef<Features, Row, never>[];
+  columns: Columns<Row>;
   rows: readonly Row[];
   rowKey: (row: Row) => string;
   initialSort?: SortingState;
@@ -25,7 +24,7 @@ export function DataTable<Row extends RowData>({
 }: DataTableProps<Row>) {
   const table = useTable({
     features,
-    columns: columns as readonly ColumnDef<Features, Row>[],
+    columns,
     data: rows,
     getRowId: rowKey,
     initialState: { sorting: initialSort },

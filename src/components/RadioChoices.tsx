@@ -1,4 +1,4 @@
-import { FieldError, Label, Radio, RadioGroup, Text } from "react-aria-components";
+import { FieldError, Label, RadioButton, RadioField, RadioGroup, Text } from "react-aria-components";
 import { fieldStyle } from "./fieldStyle.ts";
 
 export interface RadioChoicesProps<Value extends string> {
@@ -41,22 +41,20 @@ export function RadioChoices<Value extends string>({
       )}
       <div className="mt-1 flex flex-col gap-3">
         {choices.map((choice) => (
-          <Radio
-            key={choice.value}
-            value={choice.value}
-            className="group flex cursor-pointer items-start gap-2.5 data-[disabled]:cursor-default"
-          >
-            <span
-              aria-hidden="true"
-              className="mt-0.5 flex size-5 shrink-0 items-center justify-center rounded-full border border-field bg-raised group-hover:border-action group-data-[focus-visible]:outline-2 group-data-[focus-visible]:outline-offset-2 group-data-[focus-visible]:outline-action group-data-[selected]:border-action"
-            >
-              <span className="size-2.5 rounded-full group-data-[selected]:bg-action" />
-            </span>
-            <span>
-              {choice.label}
-              {choice.detail !== undefined && <span className="block text-sm text-muted">{choice.detail}</span>}
-            </span>
-          </Radio>
+          <RadioField key={choice.value} value={choice.value}>
+            <RadioButton className="group flex cursor-pointer items-start gap-2.5 data-[disabled]:cursor-default">
+              <span
+                aria-hidden="true"
+                className="mt-0.5 flex size-5 shrink-0 items-center justify-center rounded-full border border-field bg-raised group-hover:border-action group-data-[focus-visible]:outline-2 group-data-[focus-visible]:outline-offset-2 group-data-[focus-visible]:outline-action group-data-[selected]:border-action"
+              >
+                <span className="size-2.5 rounded-full group-data-[selected]:bg-action" />
+              </span>
+              <span>
+                {choice.label}
+                {choice.detail !== undefined && <span className="block text-sm text-muted">{choice.detail}</span>}
+              </span>
+            </RadioButton>
+          </RadioField>
         ))}
       </div>
       <FieldError className={fieldStyle.error}>{error}</FieldError>

@@ -1,0 +1,30 @@
+import type { LedgerAction } from "../../../shared/contracts/ledger.ts";
+
+/** What each kind of act is called in the filter. */
+export const ACTION_WORDS: Record<LedgerAction, string> = {
+  "session.started": "Signed in",
+  "session.refused": "Sign-in refused",
+  "session.ended": "Signed out",
+  "person.added": "Person added",
+  "person.changed": "Person changed",
+  "person.deactivated": "Person deactivated",
+  "person.reactivated": "Person reactivated",
+  "person.linkMade": "Sign-in link made",
+  "person.passwordSet": "Password chosen",
+  "survey.created": "Survey created",
+  "survey.changed": "Survey changed",
+  "survey.stewardsChanged": "Stewards changed",
+  "import.started": "Import started",
+  "import.finished": "Import finished",
+  "import.failed": "Import failed",
+  "import.cancelled": "Import cancelled",
+  "codebook.changed": "Codebook changed",
+  "design.declared": "Design declared",
+  "release.published": "Release published",
+  "release.removed": "Draft removed",
+  "grant.given": "Access given",
+  "grant.revoked": "Access taken back",
+  "question.asked": "Question asked",
+  "table.downloaded": "Table taken away",
+  "access.refused": "Access refused",
+};
