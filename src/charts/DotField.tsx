@@ -3,7 +3,7 @@ const STEP = 17;
 
 const LOOKS = {
   sure: "fill-higher stroke-higher",
-  estimated: "fill-higher-text stroke-higher-text",
+  estimated: "fill-higher-text stroke-ink",
   possible: "fill-higher/25 stroke-higher",
   rest: "fill-transparent stroke-field/70",
 } as const;

@@ -2,6 +2,7 @@ import type { UseQueryResult } from "@tanstack/react-query";
 import { useState } from "react";
 import type { Table } from "../../../shared/contracts/tables.ts";
 import { formatCounted } from "../../../shared/format.ts";
+import type { NamedVariable } from "../../../shared/wording.ts";
 import { Button } from "../../components/Button.tsx";
 import { Notice } from "../../components/Notice.tsx";
 import { messageOf } from "../../lib/form.ts";
@@ -23,6 +24,7 @@ export interface AnswerProps {
   draft: Draft;
   view: View;
   measures: readonly Measure[];
+  variables: readonly NamedVariable[];
   selected: CellId;
   onSelect: (id: CellId) => void;
   onChange: (changes: Partial<Draft>) => void;
@@ -45,7 +47,7 @@ function ReadingStrip({ table, selected }: { table: Table; selected: CellId }) {
 }
 
 /** How the answer stands: being worked out, refused, or there in one of its views. */
-export function Answer({ query, draft, view, measures, selected, onSelect, onChange, onLook }: AnswerProps) {
+export function Answer({ query, draft, view, measures, variables, selected, onSelect, onChange, onLook }: AnswerProps) {
   const [sortMeasure, setSortMeasure] = useState<SortMeasure>("estimate");
   const table = query.data;
   const isStale = query.isPlaceholderData;
@@ -86,7 +88,7 @@ export function Answer({ query, draft, view, measures, selected, onSelect, onCha
           {view === "table" ? (
             <PivotTable table={table} measures={measures} sortMeasure={sortMeasure} selected={selected} onSelect={onSelect} />
           ) : (
-            <PlotView table={table} view={view} selected={selected} onSelect={onSelect} />
+            <PlotView table={table} view={view} variables={variables} selected={selected} onSelect={onSelect} />
           )}
           <TableFoot table={table} />
           <ReadingStrip table={table} selected={selected} />

@@ -62,6 +62,7 @@ export function AskBoard({ releases }: { releases: readonly AskableRelease[] }) 
           draft={draft}
           view={ask.view}
           measures={ask.measures}
+          variables={codebook.data.variables}
           selected={selected}
           onSelect={setChosen}
           onChange={change}

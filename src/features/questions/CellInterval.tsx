@@ -1,22 +1,12 @@
 import type { ShownCell } from "../../../shared/contracts/tables.ts";
-
-export type Tone = "higher" | "lower" | "none" | "plain";
-
-export const toneOf = (cell: ShownCell): Tone => cell.comparison?.direction ?? "plain";
-
-const STROKES: Record<Tone, string> = {
-  higher: "stroke-higher",
-  lower: "stroke-lower",
-  none: "stroke-none",
-  plain: "stroke-action",
-};
+import { toneFill, toneStroke } from "../../charts/tones.ts";
 
 /** The estimate and its interval on the scale that the whole table shares; dashed: what it is compared with. */
 export function CellInterval({ cell, extent: [from, to] }: { cell: ShownCell; extent: readonly [number, number] }) {
   const { estimate, low, high, comparison } = cell;
   if (estimate === null) return null;
   const at = (value: number) => `${(2 + (96 * (value - from)) / (to - from)).toFixed(2)}%`;
-  const tone = toneOf(cell);
+  const tone = comparison?.direction ?? "plain";
   const reference = comparison?.reference ?? null;
   return (
     <svg aria-hidden="true" className="my-0.5 block h-3.5 w-full overflow-visible">
@@ -30,20 +20,13 @@ export function CellInterval({ cell, extent: [from, to] }: { cell: ShownCell; ex
           strokeWidth="3"
           strokeLinecap="round"
           strokeOpacity="0.55"
-          className={STROKES[tone]}
+          className={toneStroke[tone]}
         />
       )}
       {reference !== null && (
         <line x1={at(reference)} x2={at(reference)} y1="0" y2="14" strokeDasharray="2 2" className="stroke-ink" />
       )}
-      <circle
-        cx={at(estimate)}
-        cy="7"
-        r="3.25"
-        strokeWidth="1.75"
-        fill={tone === "none" ? "var(--color-paper)" : "currentColor"}
-        className={`${STROKES[tone]} ${tone === "higher" ? "text-higher" : tone === "lower" ? "text-lower" : "text-action"}`}
-      />
+      <circle cx={at(estimate)} cy="7" r="3.25" strokeWidth="1.75" className={`${toneFill[tone]} ${toneStroke[tone]}`} />
     </svg>
   );
 }
