@@ -101,8 +101,7 @@ export function estimateTargets(
   });
   const compared = contrasts.map(({ of, from }): ContrastEstimate => {
     const side = sideOf(estimates[of]!);
-    if (typeof from !== "number")
-      return compareSides(side, fixedSide(from.fixed), fixedVariances(side), side.df, options);
+    if (typeof from !== "number") return compareSides(side, fixedSide(from.fixed), fixedVariances(side), side.df, options);
     const units = countUnits(eitherOf(presence[of]!, presence[from]!), sample.stratumStart);
     const df = declaredDf ?? units.psus - units.strata;
     return compareSides(side, sideOf(estimates[from]!), moments.ofContrast(of, from), df, options);
