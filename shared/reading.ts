@@ -1,6 +1,6 @@
 import type { Comparison } from "./contracts/questions.ts";
 import type { ShownCell, WithheldReason } from "./contracts/tables.ts";
-import { figureDecimals, formatDifference, formatFigure, type FigureKind } from "./figures.ts";
+import { figureDecimals, formatFigure, type FigureKind } from "./figures.ts";
 import { formatNumber } from "./format.ts";
 
 /** What the sentences about a cell need to know beside its figures. */
@@ -51,6 +51,14 @@ function amount(difference: number, kind: FigureKind, base: number, decimals: nu
   return /[1-9]/.test(size) ? `${size} ${difference > 0 ? more : fewer}` : same;
 }
 
+/** Ends of a difference's interval: “13 to 22 more”, “7 to 16 fewer”, or “4 fewer to 6 more” where it spans nothing. */
+function amountRange(low: number | null, high: number | null, write: (value: number) => string): string {
+  if (low === null || high === null) return "";
+  const [near, far] = low < 0 && high < 0 ? [write(high), write(low)] : [write(low), write(high)];
+  const [size, word] = near.split(" ");
+  return ` (${word === far.split(" ")[1] && low * high > 0 ? (size ?? "") : near} to ${far})`;
+}
+
 function referenceWords({ comparison, reference }: ReadingContext): string {
   if (comparison.kind === "target") return reference ?? "the target";
   return comparison.kind === "group" ? `people with ${reference ?? ""}` : (reference ?? "");
@@ -69,7 +77,7 @@ export function differenceSentences(cell: ShownCell, context: ReadingContext): s
   const per = kind === "share" && base !== 100 ? ` of every ${formatNumber(base)}` : "";
   const decimals = figureDecimals(kind, low, high);
   const write = (value: number) => amount(value, kind, base, decimals);
-  const interval = low === null || high === null ? "" : ` (${write(low)} to ${write(high)})`;
+  const interval = amountRange(low, high, write);
   const size = write(difference);
   const than =
     size === "as many"
@@ -110,11 +118,3 @@ export const directionMarks = {
   lower: { mark: "▼", word: "lower" },
   none: { mark: "○", word: "no difference shown" },
 } as const;
-
-/** “higher, +17.1” as it is read out. */
-export function differenceWords(cell: ShownCell, kind: FigureKind): string | null {
-  const { comparison } = cell;
-  if (!comparison || comparison.difference === null) return null;
-  const decimals = figureDecimals(kind, comparison.low, comparison.high);
-  return `${directionMarks[comparison.direction].word}, ${formatDifference(kind, comparison.difference, decimals)}`;
-}

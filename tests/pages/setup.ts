@@ -1,7 +1,10 @@
 import "@testing-library/jest-dom/vitest";
-import { cleanup } from "@testing-library/react";
+import { cleanup, configure } from "@testing-library/react";
 import { afterEach, vi } from "vitest";
 import { queryClient } from "../../src/lib/queryClient.ts";
+
+// The first page of a file is fetched and compiled while the test waits.
+configure({ asyncUtilTimeout: 5_000 });
 
 // jsdom lays nothing out, so a virtual list would measure 0 and show no row.
 for (const side of ["clientHeight", "clientWidth"])

@@ -24,7 +24,7 @@ const conditionOf = (outcome: Outcome | null, variable: string): Condition | nul
 export function BackToVariables({ variable, onBack }: { variable: VariableView; onBack: () => void }) {
   return (
     <div className="flex flex-wrap items-center gap-x-2 px-4 pb-3">
-      <Button kind="plain" onPress={onBack}>
+      <Button kind="plain" onPress={onBack} autoFocus>
         <ChevronLeft aria-hidden="true" className="size-4" />
         Variables
       </Button>

@@ -67,7 +67,12 @@ export function PivotTable({ table, measures, sortMeasure, selected, onSelect }:
 
   return (
     <div className="relative -mx-4 overflow-x-auto px-4 sm:mx-0 sm:px-0">
-      <table role="grid" onKeyDown={moveInGrid} className="w-full border-collapse text-table">
+      <table
+        role="grid"
+        onKeyDown={moveInGrid}
+        className="w-full border-collapse text-table"
+        style={{ maxWidth: `${14 + pivot.leaves.length * 17}rem` }}
+      >
         <caption className="sr-only">{table.caption}</caption>
         <thead>
           {grid.getHeaderGroups().map((group) => (
