@@ -31,7 +31,7 @@ export function DataTable<Row extends RowData>({
   });
   const side = (columnId: string) => (alignRight.includes(columnId) ? "text-right" : "text-left");
   return (
-    <div role="region" aria-label={caption} tabIndex={0} className="-mx-4 overflow-x-auto px-4 sm:mx-0 sm:px-0">
+    <div role="region" aria-label={caption} tabIndex={0} className="relative -mx-4 overflow-x-auto px-4 sm:mx-0 sm:px-0">
       <table className="w-full border-collapse text-table">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -51,7 +51,7 @@ export function DataTable<Row extends RowData>({
                       <button
                         type="button"
                         onClick={header.column.getToggleSortingHandler()}
-                        className="group inline-flex min-h-6 items-center gap-1 font-semibold hover:text-action"
+                        className={`group inline-flex min-h-6 items-center gap-1 font-semibold hover:text-action ${alignRight.includes(header.column.id) ? "flex-row-reverse" : ""}`}
                       >
                         <table.FlexRender header={header} />
                         <Arrow
@@ -72,7 +72,7 @@ export function DataTable<Row extends RowData>({
           {table.getRowModel().rows.map((row) => (
             <tr key={row.id} className="border-b border-line">
               {row.getAllCells().map((cell) => (
-                <td key={cell.id} className={`py-2.5 pr-6 align-top last:pr-0 ${side(cell.column.id)}`}>
+                <td key={cell.id} className={`py-2 pr-6 align-baseline last:pr-0 ${side(cell.column.id)}`}>
                   <table.FlexRender cell={cell} />
                 </td>
               ))}

@@ -5,10 +5,13 @@ export function Facts({ facts }: { facts: readonly { label: string; value: React
   return (
     <dl className="border-t border-line">
       {facts.map(({ label, value, note }) => (
-        <div key={label} className="flex flex-wrap justify-between gap-x-6 gap-y-0.5 border-b border-line py-2 text-[0.9375rem]">
+        <div
+          key={label}
+          className="grid grid-cols-[minmax(7rem,1fr)_minmax(0,auto)] items-baseline gap-x-6 gap-y-0.5 border-b border-line py-2 text-[0.9375rem]"
+        >
           <dt className="text-muted">{label}</dt>
-          <dd className="ml-auto text-right tabular-nums">{value}</dd>
-          {note !== undefined && <dd className="w-full text-sm text-muted">{note}</dd>}
+          <dd className="text-right tabular-nums">{value}</dd>
+          {note !== undefined && <dd className="col-span-2 text-sm text-muted">{note}</dd>}
         </div>
       ))}
     </dl>

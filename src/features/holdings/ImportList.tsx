@@ -12,29 +12,48 @@ import { surveysQuery } from "../../lib/surveys.ts";
 import { importsQuery, isUnderWay, useCancelImport } from "./queries.ts";
 import { ProblemReport } from "./ProblemReport.tsx";
 
-const SHOWN = 5;
-
 /** Imports that run, with their progress, and how the last ones ended. */
 export function ImportList({ surveyId }: { surveyId: string }) {
   const imports = useQuery(importsQuery(surveyId));
   const client = useQueryClient();
-  const running = imports.data?.imports.filter(isUnderWay).length ?? 0;
+  const underWay = imports.data?.imports.filter(isUnderWay).length ?? 0;
   const before = useRef(0);
   useEffect(() => {
     // One has ended: its release is there now.
-    if (running < before.current) void client.invalidateQueries({ queryKey: surveysQuery.queryKey });
-    before.current = running;
-  }, [running, client]);
+    if (underWay < before.current) void client.invalidateQueries({ queryKey: surveysQuery.queryKey });
+    before.current = underWay;
+  }, [underWay, client]);
   if (imports.isError) return <Notice kind="wrong">{messageOf(imports.error)}</Notice>;
   const list = imports.data?.imports ?? [];
+  const running = list.filter(isUnderWay);
+  const [latest, ...earlier] = list.filter((view) => !isUnderWay(view));
   if (list.length === 0) return null;
   return (
     <Section title="Imports">
       <ul className="space-y-6" aria-live="polite">
-        {list.slice(0, SHOWN).map((view) => (
-          <li key={view.id}>{isUnderWay(view) ? <Running view={view} /> : <Ended view={view} />}</li>
+        {running.map((view) => (
+          <li key={view.id}>
+            <Running view={view} />
+          </li>
         ))}
+        {latest && (
+          <li key={latest.id}>
+            <Ended view={latest} />
+          </li>
+        )}
       </ul>
+      {earlier.length > 0 && (
+        <details className="mt-4">
+          <summary className="link cursor-pointer">{formatCounted(earlier.length, "earlier import")}</summary>
+          <ul className="mt-4 space-y-4">
+            {earlier.map((view) => (
+              <li key={view.id}>
+                <Ended view={view} />
+              </li>
+            ))}
+          </ul>
+        </details>
+      )}
     </Section>
   );
 }

@@ -35,25 +35,29 @@ export function ReadinessTab() {
       <Findings view={view} releaseId={release.id} />
       {release.status === "draft" && <Publication view={view} wave={release.wave} survey={release.surveyTitle} />}
       <div className="mt-12 grid gap-x-16 gap-y-12 lg:grid-cols-2">
-        <Section title="Sample">
-          <Facts
-            facts={[
-              { label: "Respondents", value: formatCount(view.respondents) },
-              {
-                label: "Sum of weights",
-                value: view.sumOfWeights === null ? "Not known yet" : formatPeople(view.sumOfWeights),
-                note: "The people the sample stands for",
-              },
-              { label: "Strata", value: formatCount(view.strata) },
-              { label: "PSUs", value: formatCount(view.psus) },
-              { label: "Degrees of freedom", value: formatCount(view.degreesOfFreedom) },
-              { label: "Strata with a single PSU", value: formatCount(view.lonelyPsus) },
-            ]}
-          />
-        </Section>
-        <Section title="Missing values" lead="Share of respondents without a value.">
-          <MissingShares missing={view.missing} />
-        </Section>
+        <div>
+          <Section title="Sample">
+            <Facts
+              facts={[
+                { label: "Respondents", value: formatCount(view.respondents) },
+                {
+                  label: "Sum of weights",
+                  value: view.sumOfWeights === null ? "Not known yet" : formatPeople(view.sumOfWeights),
+                  note: "The people the sample stands for",
+                },
+                { label: "Strata", value: formatCount(view.strata) },
+                { label: "PSUs", value: formatCount(view.psus) },
+                { label: "Degrees of freedom", value: formatCount(view.degreesOfFreedom) },
+                { label: "Strata with a single PSU", value: formatCount(view.lonelyPsus) },
+              ]}
+            />
+          </Section>
+        </div>
+        <div>
+          <Section title="Missing values" lead="Share of respondents without a value.">
+            <MissingShares missing={view.missing} />
+          </Section>
+        </div>
       </div>
       {view.weight && (
         <div className="mt-12">

@@ -1,5 +1,5 @@
 import type { VariableView } from "../../../shared/contracts/codebook.ts";
-import { formatCount, formatCounted, formatPercent, formatSignificant } from "../../../shared/format.ts";
+import { formatCount, formatCounted, formatNumber, formatPercent, formatSignificant } from "../../../shared/format.ts";
 
 const KIND_WORDS = { categorical: "categories", numeric: "numbers", text: "text" } as const;
 
