@@ -7,8 +7,8 @@ const KIND_WORDS = { categorical: "categories", numeric: "numbers", text: "text"
 export function variableWords(variable: VariableView): string {
   const named = variable.categories.filter(({ isMissing }) => !isMissing).length;
   const { minimum, maximum } = variable;
-  const range =
-    minimum === null || maximum === null ? "" : `${formatSignificant(minimum, 6)} to ${formatSignificant(maximum, 6)}`;
+  const write = (value: number) => (variable.isWhole ? formatNumber(value) : formatSignificant(value, 4));
+  const range = minimum === null || maximum === null ? "" : `${write(minimum)} to ${write(maximum)}`;
   const holds =
     variable.kind === "categorical"
       ? formatCounted(named, "category", "categories")
