@@ -6,14 +6,14 @@ export type FigureKind = "share" | "mean";
 const MOST_DECIMALS = 6;
 
 /**
- * Decimals that an estimate and its interval are written with: of a share as STATISTICS §9 says, of a mean so that the
- * interval's width keeps two significant figures.
+ * Decimals that an estimate and its interval are written with: of a share as STATISTICS §9 says, of a mean by the
+ * same measure: none when the interval is wider than 5, one down to 0.5, and so on.
  */
 export function figureDecimals(kind: FigureKind, low: number | null, high: number | null): number {
   if (kind === "share") return percentDecimals(low, high);
   const width = low === null || high === null ? 0 : high - low;
   if (!(width > 0)) return 2;
-  return Math.min(MOST_DECIMALS, Math.max(0, 1 - Math.floor(Math.log10(width))));
+  return Math.min(MOST_DECIMALS, Math.max(0, Math.ceil(-Math.log10(width / 5) - 1e-9)));
 }
 
 /** The number that people read: of every 100 for a share, the mean itself otherwise. */

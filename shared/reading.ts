@@ -11,6 +11,8 @@ export interface ReadingContext {
   /** What is counted or averaged, such as “Smoking now: Daily”. */
   outcome: string;
   comparison: Comparison;
+  /** Whether p-values were adjusted for many comparisons. */
+  isAdjusted: boolean;
   /** What the cell is compared with, such as “the rest”; null where nothing is. */
   reference: string | null;
 }
@@ -92,7 +94,10 @@ export function differenceSentences(cell: ShownCell, context: ReadingContext): s
       : [
           `A true difference of ${kind === "share" ? `${formatNumber(100 * detectable, 1)} points` : formatFigure(kind, detectable, figureDecimals(kind, 0, detectable))} or more would probably have been found; a smaller one may be there.`,
         ];
-  return [`No difference from ${words} is shown: ${than}${interval}.`, ...found];
+  return [
+    `No difference from ${words} is shown${context.isAdjusted ? ", many comparisons allowed for" : ""}: ${than}${interval}.`,
+    ...found,
+  ];
 }
 
 /** Why a figure is withheld, in a few words for a cell. */

@@ -48,7 +48,7 @@ export function pictureOf(drawing: SVGSVGElement, title: string, source: string)
   }
   const [width, height] = [Number(drawing.getAttribute("width")), Number(drawing.getAttribute("height"))];
   const body = getComputedStyle(document.documentElement);
-  const letters = Math.floor(width / 8.2);
+  const letters = Math.floor(width / 9.2);
   const [titleLines, sourceLines] = [wrap(title, letters), wrap(source, Math.floor(width / 6.6))];
   const top = MARGIN + titleLines.length * LINE + 10;
   const outer = document.createElementNS(NAMESPACE, "svg");
@@ -66,7 +66,7 @@ export function pictureOf(drawing: SVGSVGElement, title: string, source: string)
     ground,
     ...titleLines.map((line, index) => lineOfText(line, MARGIN, MARGIN + 14 + index * LINE, 15, "600", body.color)),
     copy,
-    ...sourceLines.map((line, index) => lineOfText(line, MARGIN, top + height + 14 + index * LINE, 12, "400", body.color)),
+    ...sourceLines.map((line, index) => lineOfText(line, MARGIN, top + height + 20 + index * LINE, 12, "400", body.color)),
   );
   return { svg: new XMLSerializer().serializeToString(outer), width: fullWidth, height: fullHeight };
 }

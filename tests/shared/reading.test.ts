@@ -9,6 +9,7 @@ const context: ReadingContext = {
   outcome: "Smoking now: Daily",
   comparison: { kind: "all" },
   reference: "everyone",
+  isAdjusted: false,
 };
 
 describe("what a share means in words", () => {
@@ -88,7 +89,7 @@ describe("figures of a table", () => {
     expect(formatInterval("share", null, 0.3)).toBeNull();
   });
 
-  it("of a mean keep two significant figures of the interval's width", () => {
+  it("of a mean have decimals that fit the interval's width", () => {
     expect([
       figureDecimals("mean", 7.9, 9.2),
       figureDecimals("mean", 120, 145),

@@ -2,10 +2,10 @@ import { useTable, type ExpandedState, type Row, type SortingState } from "@tans
 import { ArrowDown, ArrowUp, ChevronDown, ChevronRight } from "lucide-react";
 import { useMemo, useState } from "react";
 import type { Table } from "../../../shared/contracts/tables.ts";
+import { cellIdOf, FigureCells } from "./FigureCells.tsx";
 import { moveInGrid } from "./gridKeys.ts";
 import type { Measure } from "./measures.ts";
-import { buildPivot, cellId, groupName, sharedExtent, type CellId, type PivotRow } from "./pivot.ts";
-import { PivotCell } from "./PivotCell.tsx";
+import { buildPivot, groupName, sharedExtent, type CellId, type PivotRow } from "./pivot.ts";
 import { GROUP_COLUMN, pivotColumns, pivotFeatures } from "./pivotColumns.ts";
 import type { SortMeasure } from "./sorting.ts";
 
@@ -17,7 +17,7 @@ export interface PivotTableProps {
   onSelect: (id: CellId) => void;
 }
 
-const STICKY = "sticky left-0 z-1 bg-paper pr-3 sm:pr-4";
+const STICKY = "sticky left-0 z-1 bg-paper pr-3 sm:pr-4 print:bg-transparent";
 
 /** Groups down the side, groups across the top, totals at the edges; a cell that is chosen is read out beside the table. */
 export function PivotTable({ table, measures, sortMeasure, selected, onSelect }: PivotTableProps) {
@@ -39,31 +39,18 @@ export function PivotTable({ table, measures, sortMeasure, selected, onSelect }:
     onExpandedChange: setExpanded,
   });
 
-  const figures = (row: PivotRow, isTotalRow: boolean) =>
-    pivot.leaves.map((leaf) => {
-      const cell = row.cells.get(leaf.id);
-      if (!cell) return <td key={leaf.id} />;
-      const id = cellId([...row.codes, ...leaf.codes]);
-      const isSelected = id === selected;
-      const ground = isSelected
-        ? "bg-action-soft shadow-[inset_3px_0_0_var(--color-action)]"
-        : leaf.isTotal || isTotalRow
-          ? "bg-sunken"
-          : "";
-      return (
-        <td
-          key={leaf.id}
-          role="gridcell"
-          tabIndex={isSelected ? 0 : -1}
-          aria-selected={isSelected}
-          onFocus={() => onSelect(id)}
-          onClick={(event) => event.currentTarget.focus()}
-          className={`cursor-pointer px-3 py-2.5 align-top hover:bg-action-soft/60 focus-visible:-outline-offset-2 ${ground}`}
-        >
-          <PivotCell cell={cell} kind={table.measure} measures={measures} extent={extent} />
-        </td>
-      );
-    });
+  const figures = (row: PivotRow, isTotalRow: boolean) => (
+    <FigureCells
+      row={row}
+      leaves={pivot.leaves}
+      isTotalRow={isTotalRow}
+      kind={table.measure}
+      measures={measures}
+      extent={extent}
+      selected={pivot.leaves.some((leaf) => cellIdOf(row, leaf) === selected) ? selected : null}
+      onSelect={onSelect}
+    />
+  );
 
   return (
     <div className="relative -mx-4 overflow-x-auto px-4 sm:mx-0 sm:px-0">
@@ -104,7 +91,9 @@ export function PivotTable({ table, measures, sortMeasure, selected, onSelect }:
                         />
                       </button>
                     ) : (
-                      <grid.FlexRender header={header} />
+                      <span className={header.subHeaders.length > 0 ? "sticky left-28 sm:left-44" : undefined}>
+                        <grid.FlexRender header={header} />
+                      </span>
                     )}
                   </th>
                 );

@@ -21,7 +21,7 @@ export interface SearchListProps {
 export function SearchList({ label, choices, chosen = null, onChoose, disabled = [] }: SearchListProps) {
   return (
     <Autocomplete filter={holds}>
-      <SearchField aria-label={label} autoFocus className="relative px-4 pt-1 pb-2">
+      <SearchField aria-label={label} autoFocus className="sticky top-0 z-1 bg-raised px-4 pt-1 pb-2">
         <Search aria-hidden="true" className="pointer-events-none absolute top-4 left-7 size-4 text-muted" />
         <Input placeholder="Type to search" className={`${fieldStyle.input} pl-9 [&::-webkit-search-cancel-button]:hidden`} />
       </SearchField>
@@ -32,7 +32,7 @@ export function SearchList({ label, choices, chosen = null, onChoose, disabled =
         selectedKeys={chosen === null ? [] : [chosen]}
         disabledKeys={disabled}
         onAction={(key) => onChoose(String(key))}
-        className="max-h-80 min-h-0 flex-1 overflow-y-auto border-t border-line py-1 outline-none max-sm:max-h-none"
+        className="border-t border-line py-1 outline-none"
         renderEmptyState={() => <p className="px-4 py-3 text-sm text-muted">Nothing by that name.</p>}
       >
         {(choice) => (

@@ -11,7 +11,7 @@ const LOOK = {
 
 /** On a phone a sheet that leaves room for the keyboard on screen; otherwise beside its button. */
 const POPOVER =
-  "z-20 flex w-[26rem] max-w-[calc(100vw-1rem)] flex-col overflow-hidden rounded-sm border border-line bg-raised text-ink shadow-lg shadow-ink/10 " +
+  "z-20 flex !max-h-[min(34rem,var(--visual-viewport-height,90dvh))] w-[26rem] max-w-[calc(100vw-1rem)] flex-col overflow-hidden rounded-sm border border-line bg-raised text-ink shadow-lg shadow-ink/10 " +
   "max-sm:!fixed max-sm:!inset-2 max-sm:!max-h-none max-sm:!w-auto max-sm:shadow-[0_0_0_100vmax_rgb(0_0_0/0.45)]";
 
 export interface SlotProps {

@@ -40,8 +40,16 @@ const padded = (codes: readonly (string | null)[], length: number) => [
   ...Array<null>(length - codes.length).fill(null),
 ];
 
-/** Every cell of a table by its place, margins and the whole among them. */
+const known = new WeakMap<Table, Map<CellId, Cell>>();
+
+/** Every cell of a table by its place, margins and the whole among them; built once for each table. */
 export function cellsById(table: Table): Map<CellId, Cell> {
+  const built = known.get(table) ?? indexCells(table);
+  known.set(table, built);
+  return built;
+}
+
+function indexCells(table: Table): Map<CellId, Cell> {
   const whole = { ...table.whole, key: table.breakdowns.map(() => null) };
   return new Map([whole, ...table.margins, ...table.cells].map((cell) => [cellId(cell.key), cell]));
 }

@@ -24,6 +24,7 @@ export function readingContext(
     group: groupWords(table, key, variables),
     outcome: outcomeWords(outcome, variables),
     comparison,
+    isAdjusted: table.question.adjustment !== "none",
     reference: comparisonWords(comparison, variables, [...down, ...across], table.measure === "mean"),
   };
 }

@@ -1,3 +1,4 @@
+import { useMemo } from "react";
 import { useLocation, useNavigate } from "react-router-dom";
 import { readAddress, writeAddress, type Ask } from "./address.ts";
 import { tidyDraft, type Draft } from "./draft.ts";
@@ -6,7 +7,7 @@ import { tidyDraft, type Draft } from "./draft.ts";
 export function useAsk() {
   const { search, pathname } = useLocation();
   const navigate = useNavigate();
-  const ask = readAddress(search);
+  const ask = useMemo(() => readAddress(search), [search]);
   const go = (next: Ask, isStep: boolean) =>
     void navigate({ pathname, search: writeAddress(next) }, { replace: !isStep, preventScrollReset: true });
   return {
