@@ -32,11 +32,16 @@ const TRIES = 1000;
 export async function startTestApp(overrides: Partial<Pick<Services, "signInLimits">> = {}): Promise<TestApp> {
   const database = await createDatabase();
   const folder = await mkdtemp(path.join(os.tmpdir(), "perhundred-app-"));
+  const server = http.createServer();
+  await new Promise<void>((resolve) => server.listen(0, "127.0.0.1", resolve));
+  const listening = server.address();
+  if (typeof listening !== "object" || listening === null) throw new Error("The test server has no address.");
+  const address = `http://127.0.0.1:${listening.port}`;
   const config = readConfig({
     NODE_ENV: "test",
     PERHUNDRED_DATA: folder,
     LOG_LEVEL: "silent",
-    PUBLIC_URL: "http://perhundred.test",
+    PUBLIC_URL: address,
     COLUMN_CACHE_MB: "64",
   });
   const { sequelize, url } = database;
@@ -57,11 +62,7 @@ export async function startTestApp(overrides: Partial<Pick<Services, "signInLimi
     questions,
     ...overrides,
   };
-  const server = http.createServer(createApp(services));
-  await new Promise<void>((resolve) => server.listen(0, "127.0.0.1", resolve));
-  const listening = server.address();
-  if (typeof listening !== "object" || listening === null) throw new Error("The test server has no address.");
-  const address = `http://127.0.0.1:${listening.port}`;
+  server.on("request", createApp(services));
   return {
     services,
     sequelize,
