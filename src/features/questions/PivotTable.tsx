@@ -17,7 +17,7 @@ export interface PivotTableProps {
   onSelect: (id: CellId) => void;
 }
 
-const STICKY = "sticky left-0 z-1 bg-paper pr-3 sm:pr-4 print:bg-transparent";
+const STICKY = "sticky left-0 z-1 bg-paper pr-3 pl-4 sm:pr-4 sm:pl-0 print:bg-transparent";
 
 /** Groups down the side, groups across the top, totals at the edges; a cell that is chosen is read out beside the table. */
 export function PivotTable({ table, measures, sortMeasure, selected, onSelect }: PivotTableProps) {
@@ -53,7 +53,7 @@ export function PivotTable({ table, measures, sortMeasure, selected, onSelect }:
   );
 
   return (
-    <div className="relative -mx-4 overflow-x-auto px-4 sm:mx-0 sm:px-0">
+    <div className="relative -mx-4 overflow-x-auto sm:mx-0">
       <table
         role="grid"
         onKeyDown={moveInGrid}
@@ -132,22 +132,23 @@ function RowHeading({ row, name }: { row: Row<typeof pivotFeatures, PivotRow>; n
     <th
       scope="row"
       className={`${STICKY} min-w-20 py-3 text-left align-top ${row.getCanExpand() ? "font-semibold" : "font-medium"}`}
-      style={{ paddingLeft: `${depth}rem` }}
     >
-      {row.getCanExpand() ? (
-        <button
-          type="button"
-          aria-expanded={row.getIsExpanded()}
-          aria-label={`${name}, its groups`}
-          onClick={row.getToggleExpandedHandler()}
-          className="inline-flex min-h-6 items-start gap-1 text-left hover:text-action"
-        >
-          <Arrow aria-hidden="true" className="mt-0.5 -ml-1 size-4 shrink-0" />
-          {label}
-        </button>
-      ) : (
-        label
-      )}
+      <span className="block" style={{ paddingLeft: `${depth}rem` }}>
+        {row.getCanExpand() ? (
+          <button
+            type="button"
+            aria-expanded={row.getIsExpanded()}
+            aria-label={`${name}, its groups`}
+            onClick={row.getToggleExpandedHandler()}
+            className="inline-flex min-h-6 items-start gap-1 text-left hover:text-action"
+          >
+            <Arrow aria-hidden="true" className="mt-0.5 -ml-1 size-4 shrink-0" />
+            {label}
+          </button>
+        ) : (
+          label
+        )}
+      </span>
     </th>
   );
 }

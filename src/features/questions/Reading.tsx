@@ -13,9 +13,8 @@ type Fact = Parameters<typeof Facts>[0]["facts"][number];
 
 const isFact = (fact: Fact | null): fact is Fact => fact !== null;
 
-function peopleWithInterval(people: number, se: number | null): string {
-  if (se === null || se === 0) return formatPeople(people);
-  return `${formatPeople(people)} ± ${formatPeople(se)}`;
+function peopleFact(label: string, people: number, se: number | null): Fact {
+  return { label, value: formatPeople(people), ...(se ? { note: `Standard error ${formatPeople(se)}.` } : {}) };
 }
 
 function comparisonFacts({ comparison }: ShownCell, table: Table): (Fact | null)[] {
@@ -55,14 +54,8 @@ function facts(cell: ShownCell, table: Table): Fact[] {
   const { reliability } = cell;
   return [
     { label: "Respondents", value: formatCount(cell.respondents) },
-    cell.affectedPeople === null
-      ? null
-      : {
-          label: "People affected",
-          value: peopleWithInterval(cell.affectedPeople, cell.affectedPeopleSe),
-          note: "With its standard error.",
-        },
-    { label: "People in the group", value: peopleWithInterval(cell.people, cell.peopleSe) },
+    cell.affectedPeople === null ? null : peopleFact("People affected", cell.affectedPeople, cell.affectedPeopleSe),
+    peopleFact("People in the group", cell.people, cell.peopleSe),
     ...comparisonFacts(cell, table),
     cell.deff === null ? null : { label: "Design effect", value: formatSignificant(cell.deff) },
     {

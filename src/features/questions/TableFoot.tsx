@@ -22,8 +22,8 @@ export function TableFoot({ table }: { table: Table }) {
   return (
     <div className="measure mt-4 space-y-2 text-[0.8125rem] leading-relaxed text-muted">
       <p>
-        {everyoneWords(table)} {table.measure === "share" ? "Numbers are of every 100 people" : "Numbers are means"}, with {level}{" "}
-        % intervals.
+        {everyoneWords(table)} {table.measure === "share" ? "Numbers are of every 100 people" : "Numbers are means"}, with{" "}
+        {`${level}\u00a0%`} intervals.
         {comparison.kind !== "none" && (
           <>
             {" "}
