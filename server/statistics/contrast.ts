@@ -59,12 +59,12 @@ export function compareSides(
   const scale = Math.sqrt((of.variance ?? 0) * (from.variance ?? 0));
   const correlation = scale > 0 && variances.covariance !== null ? clamp(variances.covariance / scale) : null;
   const mover = moverLimits(of, from, correlation ?? 0, options);
-  const ratio = q > 0 && p >= 0 ? p / q : null;
+  const ratio = q > 0 && p >= 0 ? finite(p / q) : null;
   const logRatioSe = ratio !== null && ratio > 0 ? root(variances.logRatio) : null;
   const ratioLimits = multiplied(ratio, logRatioSe, t);
   // Of a mean that lies between 0 and 1 the odds are defined too, though few would ask for them.
   const hasOdds = q > 0 && q < 1 && p >= 0 && p < 1;
-  const oddsRatio = hasOdds ? p / (1 - p) / (q / (1 - q)) : null;
+  const oddsRatio = hasOdds ? finite(p / (1 - p) / (q / (1 - q))) : null;
   const logOddsRatioSe = oddsRatio !== null && oddsRatio > 0 ? root(variances.logOddsRatio) : null;
   const oddsLimits = multiplied(oddsRatio, logOddsRatioSe, t);
   const shown = options.difference === "mover" ? mover : linear;
@@ -159,7 +159,12 @@ function ownLimits(side: ContrastSide, options: { level: Level; isBinary: boolea
 }
 
 function root(variance: number | null): number | null {
-  return variance === null ? null : Math.sqrt(Math.max(0, variance));
+  return variance === null ? null : finite(Math.sqrt(Math.max(0, variance)));
+}
+
+/** Beside a reference next to 0 a ratio can exceed every number: then it does not exist here. */
+function finite(value: number): number | null {
+  return Number.isFinite(value) ? value : null;
 }
 
 function clamp(correlation: number): number {

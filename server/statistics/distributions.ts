@@ -1,7 +1,7 @@
 import betainc from "@stdlib/math-base-special-betainc";
-import betaincinv from "@stdlib/math-base-special-betaincinv";
 import erfc from "@stdlib/math-base-special-erfc";
 import erfcinv from "@stdlib/math-base-special-erfcinv";
+import { inverseBetaLogit } from "./betaInverse.ts";
 import { DomainError } from "./errors.ts";
 
 /**
@@ -46,14 +46,9 @@ export function studentQuantile(probability: number, df: number): number {
   if (probability === 0.5) return 0;
   const twoTails = 2 * Math.min(probability, 1 - probability);
   if (twoTails === 0) return probability === 0 ? -Infinity : Infinity;
-  const sign = probability < 0.5 ? -1 : 1;
-  // x = df/(df + t²) has the two tails' mass below it; near the middle the complement is the one that keeps its digits.
-  if (twoTails < 0.5) {
-    const x = betaincinv(twoTails, df / 2, 0.5);
-    return sign * Math.sqrt((df * (1 - x)) / x);
-  }
-  const complement = betaincinv(1 - twoTails, 0.5, df / 2);
-  return sign * Math.sqrt((df * complement) / (1 - complement));
+  // df/(df + t²) is beta with shapes df/2 and ½; on the logit scale t² is df · e^(−logit), and neither end loses digits.
+  const logit = inverseBetaLogit(twoTails, df / 2, 0.5);
+  return Math.sign(probability - 0.5) * Math.sqrt(df) * Math.exp(-logit / 2);
 }
 
 const criticalValues = new Map<string, number>();
@@ -88,7 +83,8 @@ export function betaQuantile(probability: number, a: number, b: number): number 
   assertProbability(probability);
   assertPositive(a, "shape");
   assertPositive(b, "shape");
-  return betaincinv(probability, a, b);
+  if (probability === 0 || probability === 1) return probability;
+  return 1 / (1 + Math.exp(-inverseBetaLogit(probability, a, b)));
 }
 
 /** Share of the F distribution above `f`: the p-value of an F statistic. */
@@ -107,8 +103,11 @@ export function fisherCdf(f: number, numeratorDf: number, denominatorDf: number)
 
 /** The value below which a share `probability` of the F distribution lies. */
 export function fisherQuantile(probability: number, numeratorDf: number, denominatorDf: number): number {
-  const x = betaQuantile(probability, numeratorDf / 2, denominatorDf / 2);
-  return (denominatorDf * x) / (numeratorDf * (1 - x));
+  assertProbability(probability);
+  assertPositive(numeratorDf, "degrees of freedom");
+  assertPositive(denominatorDf, "degrees of freedom");
+  if (probability === 0 || probability === 1) return probability === 0 ? 0 : Infinity;
+  return (denominatorDf / numeratorDf) * Math.exp(inverseBetaLogit(probability, numeratorDf / 2, denominatorDf / 2));
 }
 
 function assertProbability(probability: number): void {

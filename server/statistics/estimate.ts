@@ -144,7 +144,7 @@ function describe(
     effectiveRespondents: defined && options.isBinary ? adjustedEffectiveSize(estimate, se, n, df, options.level) : before,
     effectiveBeforeAdjustment: before,
     kish: people > 0 ? (n * domain.squaredWeight) / people ** 2 : null,
-    cv: defined && estimate !== 0 ? se / Math.abs(estimate) : null,
+    cv: defined && Number.isFinite(se / Math.abs(estimate)) ? se / Math.abs(estimate) : null,
   };
 }
 

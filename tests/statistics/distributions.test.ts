@@ -1,3 +1,4 @@
+import betaincinv from "@stdlib/math-base-special-betaincinv";
 import jstat from "jstat";
 import { describe, expect, it } from "vitest";
 import {
@@ -172,9 +173,13 @@ describe("the beta distribution", () => {
         const x = betaQuantile(probability, a, b);
         expectClose(betaCdf(x, a, b), probability, 1e-10, `${a}, ${b} at ${probability}`);
         expect(Math.abs(integratedBeta(x, a, b) - probability), `${a}, ${b} at ${probability}`).toBeLessThan(1e-10);
+        expectClose(betaincinv(probability, a, b), x, 1e-11, `${a}, ${b} at ${probability}, another inverse`);
         if (a + b < 500) expect(Math.abs(jstat.beta.cdf(x, a, b) - probability)).toBeLessThan(1e-8);
       }
     }
+    // All but 1e-16 of (0, 1), where a general inverse can answer 0: the limits of a handful of respondents.
+    expect(betaQuantile(0.975, 1.2, 0.1)).toBeCloseTo(1, 12);
+    expectClose(betaQuantile(0.025, 0.2, 1.1), 8.529322717657e-9, 1e-11, "next to 0");
     expect(betaCdf(0, 2, 3)).toBe(0);
     expect(betaCdf(1, 2, 3)).toBe(1);
   });
