@@ -1,5 +1,5 @@
 import { studentCritical, studentQuantile, studentTwoSidedP } from "./distributions.ts";
-import { intervalFor, type Level, moverInterval, type Side } from "./intervals.ts";
+import { adjustSize, intervalFor, kornGraubard, type Level, moverInterval, type Side } from "./intervals.ts";
 import type { ContrastVariances } from "./moments.ts";
 
 /** Two targets compared. A null is a quantity that does not exist here: a ratio to 0, a test without a standard error. */
@@ -37,6 +37,8 @@ export interface ContrastSide {
   respondents: number;
   df: number;
   isFixed: boolean;
+  /** Effective size before any adjustment, where it is not p(1 − p)/V: an age-adjusted share's. */
+  effective?: number;
 }
 
 const POWER = 0.8;
@@ -148,6 +150,13 @@ function ownLimits(side: ContrastSide, options: { level: Level; isBinary: boolea
   const { estimate } = side;
   if (estimate === null) return null;
   if (side.isFixed) return { estimate, low: estimate, high: estimate };
+  const { level } = options;
+  if (options.isBinary && side.effective !== undefined && side.df >= 1 && side.respondents > 1) {
+    const isEdge = estimate <= 0 || estimate >= 1;
+    const size = isEdge ? side.respondents : adjustSize(side.effective, side.respondents, side.df, level);
+    const own = kornGraubard(estimate, size, level);
+    return own.low === null || own.high === null ? null : { estimate, low: own.low, high: own.high };
+  }
   const { low, high } = intervalFor("korn-graubard", {
     ...options,
     estimate,
