@@ -15,13 +15,16 @@ const toClient = { group: ["**/src/**"], message: "The server knows nothing of t
 export default defineConfig(
   { ignores: ["dist", ".data", "coverage", "node_modules", "**/*.mjs"] },
   tseslint.configs.strictTypeChecked,
-  hooks.configs.flat["recommended-latest"]!,
+  hooks.configs.flat["recommended-latest"],
   {
     languageOptions: { parserOptions: { projectService: true, tsconfigRootDir: import.meta.dirname } },
     rules: {
       "max-lines": ["error", { max: 350, skipBlankLines: true, skipComments: true }],
       "@typescript-eslint/restrict-template-expressions": ["error", { allowNumber: true }],
-      "@typescript-eslint/no-confusing-void-expression": ["error", { ignoreArrowShorthand: true, ignoreVoidReturningFunctions: true }],
+      "@typescript-eslint/no-confusing-void-expression": [
+        "error",
+        { ignoreArrowShorthand: true, ignoreVoidReturningFunctions: true },
+      ],
       // Indexing under noUncheckedIndexedAccess, in loops whose bounds prove it.
       "@typescript-eslint/no-non-null-assertion": "off",
       "@typescript-eslint/no-unnecessary-condition": ["error", { allowConstantLoopConditions: true }],

@@ -1,3 +1,4 @@
+import { medianSorted } from "simple-statistics";
 import type { ReadinessView } from "../../shared/contracts/readiness.ts";
 
 const BINS = 20;
@@ -34,9 +35,7 @@ export function weightSpread(weight: Float64Array): ReadinessView["weight"] {
     squares += value * value;
   }
   const positive = sorted.filter((value) => value > 0);
-  const middle = positive.length >> 1;
-  const median =
-    positive.length === 0 ? 0 : positive.length % 2 === 1 ? positive[middle]! : (positive[middle - 1]! + positive[middle]!) / 2;
+  const median = positive.length === 0 ? 0 : medianSorted([...positive]);
   return {
     minimum: sorted[0]!,
     median,

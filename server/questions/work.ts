@@ -117,4 +117,4 @@ export async function answer(work: Work): Promise<Answer> {
 }
 
 /** The worker's entry. */
-export default answer;
+export default (work: Work): Promise<Answer> => answer(work);

@@ -1,8 +1,7 @@
 import { useController, type Control, type FieldPath, type FieldValues } from "react-hook-form";
-import { Checkbox, CheckboxGroup, type CheckboxGroupProps } from "./Checkbox.tsx";
+import { CheckboxGroup, type CheckboxGroupProps } from "./Checkbox.tsx";
 import { Chooser, type ChooserProps } from "./Chooser.tsx";
 import { Notice } from "./Notice.tsx";
-import { RadioChoices, type RadioChoicesProps } from "./RadioChoices.tsx";
 import { TextField, type TextFieldProps } from "./TextField.tsx";
 
 /** Which field of which form; everything else is the plain component's. */
@@ -60,31 +59,6 @@ export function FormCheckboxGroup<Values extends FieldValues, Sent, Value extend
   const chosen: unknown = field.value;
   const value = props.choices.map((choice) => choice.value).filter((choice) => Array.isArray(chosen) && chosen.includes(choice));
   return <CheckboxGroup {...props} value={value} onChange={field.onChange} error={fieldState.error?.message} />;
-}
-
-export function FormCheckbox<Values extends FieldValues, Sent>({
-  control,
-  name,
-  children,
-}: Bound<Values, Sent> & { children: string }) {
-  const { field } = useController({ control, name });
-  return (
-    <Checkbox isSelected={field.value === true} onChange={field.onChange}>
-      {children}
-    </Checkbox>
-  );
-}
-
-export function FormRadioChoices<Values extends FieldValues, Sent, Value extends string>({
-  control,
-  name,
-  ...props
-}: Bound<Values, Sent> & Omit<RadioChoicesProps<Value>, Given>) {
-  const { field, fieldState } = useController({ control, name });
-  const chosen: unknown = field.value;
-  const value = props.choices.find((choice) => choice.value === chosen)?.value ?? props.choices[0]?.value;
-  if (value === undefined) return null;
-  return <RadioChoices {...props} value={value} onChange={field.onChange} error={fieldState.error?.message} />;
 }
 
 /** What is wrong with the form as a whole; read out at once. */

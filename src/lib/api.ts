@@ -18,7 +18,7 @@ async function guarded<Answer>(exchange: Promise<Answer>): Promise<Answer> {
 }
 
 async function change<Schema extends z.ZodType>(method: string, path: string, schema: Schema, body?: unknown) {
-  const { csrfToken } = await queryClient.ensureQueryData(sessionQuery);
+  const { csrfToken } = await queryClient.query({ ...sessionQuery, staleTime: "static" });
   return guarded(request(method, path, schema, { body, csrfToken }));
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { Question } from "../../shared/contracts/questions.ts";
+import { Question, type QuestionInput } from "../../shared/contracts/questions.ts";
 import type { CodebookVariable } from "../../server/microdata/codebook.ts";
 import { AppError } from "../../server/errors.ts";
 import { assign } from "../../server/questions/assign.ts";
@@ -36,7 +36,7 @@ const COLUMNS = {
 };
 const WEIGHTS = Float64Array.of(1, 1, 1, 1, 1, 0);
 
-function assigned(question: Omit<Parameters<typeof Question.parse>[0] & object, "releaseId">, weights = WEIGHTS) {
+function assigned(question: Omit<QuestionInput, "releaseId">, weights = WEIGHTS) {
   const { plan } = compileQuestion(Question.parse({ releaseId: RELEASE, ...question }), VARIABLES);
   return assign(plan, COLUMNS, weights);
 }
@@ -52,7 +52,7 @@ describe("assign", () => {
   });
 
   it("puts a value on a shared band end into the first band, and a missing code into none", () => {
-    const bands = [
+    const bands: [number | null, number | null, string][] = [
       [null, 45, "to 45"],
       [45, null, "45 and over"],
     ];
