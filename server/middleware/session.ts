@@ -29,6 +29,9 @@ export function issueCsrfToken(request: Request, response: Response): string {
   return issue(request, response);
 }
 
+/** Host and port of an origin; null for one that is no address, such as "null". */
+const hostOf = (origin: string) => (URL.canParse(origin) ? new URL(origin).host : null);
+
 function checkOrigin(publicUrl: string): RequestHandler {
   return (request, _response, next) => {
     const isAnonymousChange = request.method === "POST" && BEFORE_SIGN_IN.some((path) => path.test(request.path));
@@ -37,9 +40,8 @@ function checkOrigin(publicUrl: string): RequestHandler {
       return;
     }
     const origin = request.get("origin");
-    const isForeign =
-      request.get("sec-fetch-site") === "cross-site" ||
-      (origin !== undefined && origin !== publicUrl && new URL(publicUrl).host !== request.get("host"));
+    const isOurs = origin === undefined || origin === publicUrl || hostOf(origin) === request.get("host");
+    const isForeign = request.get("sec-fetch-site") === "cross-site" || !isOurs;
     if (isForeign || !request.is("json"))
       throw new AppError("forbidden", "This can only be sent from Perhundred's own pages. Nothing was changed.");
     next();
