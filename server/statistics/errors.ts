@@ -2,7 +2,7 @@
 export class DesignError extends Error {
   override readonly name = "DesignError";
   constructor(
-    readonly code: "lonely-psu" | "bad-weight" | "bad-population" | "bad-replicates",
+    readonly code: "lonely-psu" | "bad-weight" | "bad-population" | "bad-replicates" | "mixed-waves",
     message: string,
   ) {
     super(message);
