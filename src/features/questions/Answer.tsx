@@ -3,10 +3,6 @@ import { useState } from "react";
 import type { Table } from "../../../shared/contracts/tables.ts";
 import { formatCounted } from "../../../shared/format.ts";
 import type { NamedVariable } from "../../../shared/wording.ts";
-import { Button } from "../../components/Button.tsx";
-import { Notice } from "../../components/Notice.tsx";
-import { messageOf } from "../../lib/form.ts";
-import { ApiError } from "../../lib/request.ts";
 import type { Ask, View } from "./address.ts";
 import type { Draft } from "./draft.ts";
 import type { Measure } from "./measures.ts";
@@ -14,6 +10,7 @@ import { DifferenceTool, IntervalTool, MeasuresTool, OrderTool } from "./MethodT
 import { cellsById, groupName, type CellId } from "./pivot.ts";
 import { PivotTable } from "./PivotTable.tsx";
 import { PlotView } from "./PlotView.tsx";
+import { Refusal } from "./Refusal.tsx";
 import type { SortMeasure } from "./sorting.ts";
 import { TableFoot } from "./TableFoot.tsx";
 import { TakeAway } from "./TakeAway.tsx";
@@ -72,17 +69,7 @@ export function Answer({ query, draft, view, measures, variables, selected, onSe
       <p role="status" className={query.isPending ? "py-6 text-muted" : "sr-only"}>
         {status}
       </p>
-      {query.isError && (
-        <Notice
-          kind="wrong"
-          title={query.error instanceof ApiError ? query.error.problem.title : "This answer couldn't be worked out"}
-        >
-          <p>{messageOf(query.error)}</p>
-          <p className="mt-3">
-            <Button onPress={() => void query.refetch()}>Try again</Button>
-          </p>
-        </Notice>
-      )}
+      {query.isError && <Refusal error={query.error} onRetry={query.refetch} />}
       {table && (
         <div aria-busy={isStale} className={`transition-opacity duration-200 ${isStale ? "opacity-45" : ""}`}>
           {view === "table" ? (

@@ -3,7 +3,6 @@ import { useState } from "react";
 import { questionSentence } from "../../../shared/wording.ts";
 import { Notice } from "../../components/Notice.tsx";
 import { Page } from "../../components/Page.tsx";
-import { PageError } from "../../components/PageError.tsx";
 import { PageLoading } from "../../components/PageLoading.tsx";
 import { Answer } from "./Answer.tsx";
 import { AskStart } from "./AskStart.tsx";
@@ -11,6 +10,7 @@ import { questionOf } from "./draft.ts";
 import { cellId, cellsById, type CellId } from "./pivot.ts";
 import { codebookQuery, tableQuery } from "./queries.ts";
 import { QuestionLine } from "./QuestionLine.tsx";
+import { Refusal } from "./Refusal.tsx";
 import { Reading } from "./Reading.tsx";
 import type { AskableRelease } from "./releases.ts";
 import { useAsk } from "./useAsk.ts";
@@ -25,29 +25,31 @@ export function AskBoard({ releases }: { releases: readonly AskableRelease[] }) 
   const table = useQuery(tableQuery(question));
   const [chosen, setChosen] = useState<CellId | null>(null);
 
-  if (codebook.isPending) return <PageLoading what="the codebook" />;
-  if (codebook.isError) return <PageError error={codebook.error} onRetry={codebook.refetch} />;
-  const variables = askable(codebook.data);
-  const release = releases.find(({ id }) => id === draft.releaseId);
   const change: typeof ask.change = (changes) => ask.change({ releaseId: draft.releaseId, ...changes });
-  const cells = question && table.data ? cellsById(table.data) : null;
+  const known = codebook.data?.variables ?? [];
+  const variables = codebook.data ? askable(codebook.data) : [];
+  const release = releases.find(({ id }) => id === draft.releaseId);
+  const cells = codebook.data && question && table.data ? cellsById(table.data) : null;
   const wholeId = cellId(table.data?.breakdowns.map(() => null) ?? []);
   const selected = chosen !== null && cells?.has(chosen) ? chosen : wholeId;
   const cell = cells?.get(selected);
 
+  // The sentence keeps its place through every state: a chooser that is open in it must not be taken down.
   return (
     <Page
-      title={<QuestionLine draft={draft} releases={releases} variables={variables} onChange={change} />}
+      title={
+        <QuestionLine draft={draft} releases={releases} variables={variables} isPending={codebook.isPending} onChange={change} />
+      }
       windowTitle={
-        question && release
+        question && release && codebook.data
           ? questionSentence(question, {
               surveyTitle: release.surveyTitle,
               wave: release.wave,
-              variables: codebook.data.variables,
+              variables: known,
             })
           : "Ask"
       }
-      aside={table.data && cell ? <Reading cell={cell} table={table.data} variables={codebook.data.variables} /> : undefined}
+      aside={table.data && cell ? <Reading cell={cell} table={table.data} variables={known} /> : undefined}
     >
       {ask.unread.length > 0 && (
         <div className="mb-6">
@@ -56,13 +58,17 @@ export function AskBoard({ releases }: { releases: readonly AskableRelease[] }) 
           </Notice>
         </div>
       )}
-      {question ? (
+      {codebook.isPending ? (
+        <PageLoading what="the codebook" />
+      ) : codebook.isError ? (
+        <Refusal error={codebook.error} onRetry={codebook.refetch} />
+      ) : question ? (
         <Answer
           query={table}
           draft={draft}
           view={ask.view}
           measures={ask.measures}
-          variables={codebook.data.variables}
+          variables={known}
           selected={selected}
           onSelect={setChosen}
           onChange={change}

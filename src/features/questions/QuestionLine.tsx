@@ -12,10 +12,12 @@ export interface QuestionLineProps {
   draft: Draft;
   releases: readonly AskableRelease[];
   variables: readonly VariableView[];
+  /** The words for the variables aren't here yet. */
+  isPending: boolean;
   onChange: (changes: Partial<Draft>) => void;
 }
 
-function ReleaseSlot({ draft, releases, onChange }: Omit<QuestionLineProps, "variables">) {
+function ReleaseSlot({ draft, releases, onChange }: Omit<QuestionLineProps, "variables" | "isPending">) {
   const release = releases.find(({ id }) => id === draft.releaseId);
   return (
     <Slot title="In which survey?" value={release ? releaseName(release) : "choose a release"} isEmpty={!release}>
@@ -35,11 +37,13 @@ function ReleaseSlot({ draft, releases, onChange }: Omit<QuestionLineProps, "var
 }
 
 /** The question as a sentence whose parts can be chosen anew. */
-export function QuestionLine({ draft, releases, variables, onChange }: QuestionLineProps) {
+export function QuestionLine({ draft, releases, variables, isPending, onChange }: QuestionLineProps) {
   const isMean = draft.outcome !== null && "variable" in draft.outcome;
   const names = (breakdowns: Draft["down"]) => breakdowns.map(({ variable }) => variable);
   return (
-    <span className="block max-w-[54rem] text-[1.3125rem] leading-[1.65] text-pretty sm:text-[1.625rem]">
+    <span
+      className={`block max-w-[54rem] text-[1.3125rem] leading-[1.65] text-pretty sm:text-[1.625rem] ${isPending ? "opacity-0" : ""}`}
+    >
       In <ReleaseSlot draft={draft} releases={releases} onChange={onChange} />
       {isMean ? ", among " : ", of every 100 "}
       <PopulationSlot variables={variables} among={draft.among} onChange={(among) => onChange({ among })} />

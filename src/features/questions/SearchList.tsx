@@ -31,7 +31,11 @@ export function SearchList({ label, choices, chosen = null, onChoose, disabled =
         selectionMode="single"
         selectedKeys={chosen === null ? [] : [chosen]}
         disabledKeys={disabled}
-        onAction={(key) => onChoose(String(key))}
+        onSelectionChange={(keys) => {
+          // Choosing what is chosen already empties the set; it stays chosen.
+          const [key = chosen] = keys === "all" ? [] : keys;
+          if (key !== null) onChoose(String(key));
+        }}
         className="border-t border-line py-1 outline-none"
         renderEmptyState={() => <p className="px-4 py-3 text-sm text-muted">Nothing by that name.</p>}
       >

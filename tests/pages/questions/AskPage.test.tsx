@@ -3,7 +3,7 @@ import { beforeEach, describe, expect, it, vi } from "vitest";
 import { Question } from "../../../shared/contracts/questions.ts";
 import { renderApp } from "../renderApp.tsx";
 import { refuse, serveApi, sessionOf, type ApiTable } from "../serveApi.ts";
-import { codebook, releaseId, surveys, tableOf } from "./askFixtures.ts";
+import { codebook, olderReleaseId, releaseId, surveys, tableOf } from "./askFixtures.ts";
 
 const AGES = "age(18..24;25..34;35..44;45..54;55..64;65..)";
 const ASKED = `/ask?release=${releaseId}&outcome=smoking:1&down=${AGES}&across=sex&than=all`;
@@ -26,6 +26,7 @@ describe("a question in the address", () => {
 
   it("is read as one sentence, which is the window's title too", async () => {
     renderApp(ASKED);
+    await grid();
     expect(await sentence()).toBe(
       "In Tamarisk Coast Adult Health Survey, 2025, of every 100 people, how many have Smoking now: Daily? Split by Age in years in bands down and Sex across. Compared with everyone.",
     );
@@ -241,6 +242,21 @@ describe("when there is no answer", () => {
     Object.assign(table, api());
     await user.click(screen.getByRole("button", { name: "Try again" }));
     expect(await grid()).toBeInTheDocument();
+  });
+
+  it("keeps the sentence where the release is closed to the reader, so that another can be chosen", async () => {
+    serveApi(
+      api({
+        "GET /api/releases/:id/codebook": ({ params }) =>
+          params.id === releaseId ? { body: codebook } : refuse(404, "There is no such release, or it isn't open to you."),
+      }),
+    );
+    const { user, address } = renderApp(ASKED.replace(releaseId, olderReleaseId));
+    expect(await screen.findByRole("alert")).toHaveTextContent("There is no such release, or it isn't open to you.");
+    await user.click(screen.getByRole("button", { name: /Survey, 2023$/u }));
+    await user.click(await screen.findByRole("option", { name: /2025/u }));
+    expect(await grid()).toBeInTheDocument();
+    expect(address()).toContain(`release=${releaseId}&outcome=smoking:1`);
   });
 
   it("teaches where no survey is open, and where none is published", async () => {
