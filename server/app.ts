@@ -58,6 +58,6 @@ export function createApp(services: Services): Express {
   app.use("/api", ledgerRoutes());
   app.use("/api", notFound);
   app.use(serveClient());
-  app.use(handleErrors(services.logger));
+  app.use(handleErrors(services));
   return app;
 }

@@ -22,9 +22,12 @@ export const requirePerson: RequestHandler = async (request, _response, next) =>
   next();
 };
 
+/** The person that `requirePerson` let through; null on a request that hasn't come so far. */
+export const knownReader = (request: Request): Reader | null => readers.get(request) ?? null;
+
 /** The person that `requirePerson` let through. */
 export function currentReader(request: Request): Reader {
-  const reader = readers.get(request);
+  const reader = knownReader(request);
   if (!reader) throw new Error("currentReader needs requirePerson before it.");
   return reader;
 }

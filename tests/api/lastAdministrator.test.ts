@@ -20,7 +20,7 @@ it("keeps one active administrator, even when two are changed at once", async ()
   expect(answers.map(({ status }) => status).sort()).not.toEqual([200, 200]);
   const left = await app.sequelize.query("SELECT COUNT(*) AS n FROM person_roles WHERE role = 'administrator'");
   expect(left[0]).toEqual([{ n: 1 }]);
-  const last = answers[0]?.status === 200 ? { client: one, id: first.id } : { client: two, id: second.id };
+  const last = answers[0].status === 200 ? { client: one, id: first.id } : { client: two, id: second.id };
   const refused = await last.client.patch(`/api/people/${last.id}`, { roles: ["planner"] });
   expect(refused.status).toBe(409);
   expect((await last.client.patch(`/api/people/${last.id}`, { isActive: false })).status).not.toBe(200);
