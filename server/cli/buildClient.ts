@@ -24,6 +24,13 @@ export async function buildClient(): Promise<void> {
   const source = await fingerprint();
   if (existsSync(STAMP) && (await readFile(STAMP, "utf8")) === source) return;
   const { build } = await import("vite");
-  await build({ root: ROOT, logLevel: "warn", mode: "production" });
+  // The bundler sets the mode for the whole process, where tests or a server go on afterwards.
+  const mode = process.env.NODE_ENV;
+  try {
+    await build({ root: ROOT, logLevel: "warn", mode: "production" });
+  } finally {
+    if (mode === undefined) delete process.env.NODE_ENV;
+    else process.env.NODE_ENV = mode;
+  }
   await writeFile(STAMP, source);
 }
