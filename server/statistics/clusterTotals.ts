@@ -54,6 +54,7 @@ export function tabulate(
   };
   const totals = emptyTotals(cells, centre);
   const { respondents, affected, squaredWeight, squaredScore } = totals;
+  const { cell: entryCell, weight: entryWeight, score: entryScore } = table;
   const latestEntry = new Int32Array(cells).fill(-1);
   let entries = 0;
   for (let cluster = 0; cluster < clusters; cluster++) {
@@ -72,12 +73,12 @@ export function tabulate(
       if (entry < first) {
         entry = entries++;
         latestEntry[cell] = entry;
-        table.cell[entry] = cell;
+        entryCell[entry] = cell;
       }
       const y = outcome[row]!;
       const score = w * (y - centre);
-      table.weight[entry]! += w;
-      table.score[entry]! += score;
+      entryWeight[entry]! += w;
+      entryScore[entry]! += score;
       respondents[cell]! += 1;
       if (y !== 0) affected[cell]! += 1;
       squaredWeight[cell]! += w * w;

@@ -41,7 +41,7 @@ export function planComponents(totals: CellTotals, targets: readonly Target[], d
   };
   const terms = targets.map((target, index): Term[] => {
     const cells = target.cells.length;
-    const isMost = cells > 8 && cells < totals.cells && cells > 0.75 * totals.cells && domains[index]!.people > people / 2;
+    const isMost = cells > 8 && cells < totals.cells && cells > 0.5 * totals.cells && domains[index]!.people > people / 2;
     if (!isMost) return [{ component: componentOf(target), sign: 1 }];
     return [
       { component: componentOf({ cells: everyone }), sign: 1 },

@@ -51,18 +51,30 @@ export function eitherOf(left: Uint32Array, right: Uint32Array): Uint32Array {
 /** PSUs in a set, and strata that hold any of them. Their difference is the degrees of freedom (Korn & Graubard 1999). */
 export function countUnits(set: Uint32Array, stratumStart: Uint32Array): { psus: number; strata: number } {
   let psus = 0;
+  for (const word of set) psus += countBits(word);
   let strata = 0;
-  let stratum = 0;
-  let nextStratum = 0; // first PSU past the stratum counted last
-  for (let word = 0; word < set.length; word++) {
-    for (let rest = set[word]!; rest !== 0; rest &= rest - 1) {
-      const psu = word * 32 + 31 - Math.clz32(rest & -rest);
-      psus++;
-      if (psu < nextStratum) continue;
-      while (stratumStart[stratum + 1]! <= psu) stratum++;
-      nextStratum = stratumStart[stratum + 1]!;
-      strata++;
-    }
+  for (let stratum = 0; stratum < stratumStart.length - 1; stratum++) {
+    if (hasBit(set, stratumStart[stratum]!, stratumStart[stratum + 1]!)) strata++;
   }
   return { psus, strata };
+}
+
+/** Bits of a word, added up in pairs, fours and eights side by side. */
+function countBits(word: number): number {
+  const pairs = word - ((word >>> 1) & 0x55555555);
+  const fours = (pairs & 0x33333333) + ((pairs >>> 2) & 0x33333333);
+  return Math.imul((fours + (fours >>> 4)) & 0x0f0f0f0f, 0x01010101) >>> 24;
+}
+
+/** Whether any bit from `first` up to, not including, `end` is set. */
+function hasBit(set: Uint32Array, first: number, end: number): boolean {
+  if (end <= first) return false;
+  const firstWord = first >>> 5;
+  const lastWord = (end - 1) >>> 5;
+  const from = -1 << (first & 31);
+  const upTo = -1 >>> (31 - ((end - 1) & 31));
+  if (firstWord === lastWord) return (set[firstWord]! & from & upTo) !== 0;
+  if ((set[firstWord]! & from) !== 0 || (set[lastWord]! & upTo) !== 0) return true;
+  for (let word = firstWord + 1; word < lastWord; word++) if (set[word] !== 0) return true;
+  return false;
 }

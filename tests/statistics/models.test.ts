@@ -10,6 +10,7 @@ import type { Assignment, Sample } from "../../server/statistics/types.ts";
 import { buildSample, type Row } from "./support/buildSample.ts";
 import { expectClose } from "./support/close.ts";
 import { load, options } from "./support/published.ts";
+import type { ReferenceCase } from "./support/referenceCases.ts";
 
 const LINEAR = { ...options, interval: "linear" } as const;
 const twoCells = [{ cells: [0] }, { cells: [1] }];
@@ -191,6 +192,49 @@ describe("standardised shares", () => {
     expectClose(result.contrasts[0]!.se, crude.contrasts[0]!.se!, 1e-10, "error of the difference");
     expectClose(result.contrasts[0]!.moverLow, crude.contrasts[0]!.moverLow!, 1e-9, "other limit");
     expect(result.contrasts[1]!.se).toBe(result.groups[2]!.se);
+  });
+});
+
+describe("a function of cells", () => {
+  const smoker = { variable: "smoker", affected: 1 };
+  const met = { variable: "metTarget", affected: 1 };
+  const lonely = { weight: "weight", strata: "stratum", psu: "psu" };
+  const designs: [string, string, ReferenceCase["design"], ReferenceCase["query"]][] = [
+    ["lonely strata centred", "coast_lonely.csv", { ...lonely, lonely: "centred" }, { outcome: smoker, by: "sex" }],
+    ["lonely strata certain", "coast_lonely.csv", { ...lonely, lonely: "certainty" }, { outcome: smoker, by: "sex" }],
+    ["lonely strata averaged", "coast_lonely.csv", { ...lonely, lonely: "average" }, { outcome: smoker, by: "sex" }],
+    ["two stages", "apiclus2.csv", { weight: "pw", psu: ["dnum", "snum"], fpc: ["fpc1", "fpc2"] }, { outcome: met, by: "stype" }],
+    [
+      "replicates about their mean",
+      "coast_replicates.csv",
+      { weight: "weight", replicates: { pattern: "^jk[0-9]+$", method: "JKn", scale: 1, rscales: 0.7, mse: false } },
+      { outcome: smoker, by: "sex" },
+    ],
+  ];
+  it.each(designs)("varies as estimates do under every design: %s", (_, data, design, query) => {
+    const { sample, assignment } = load(data, design, query);
+    const targets = [{ cells: [0] }, { cells: [1] }, { cells: [0, 1] }];
+    const request = [{ of: 0, from: 2 }];
+    const crude = estimateTargets(sample, assignment, targets, request, LINEAR);
+    const result = standardise(
+      sample,
+      assignment,
+      targets.map((target) => [target]),
+      [1],
+      request,
+      LINEAR,
+    );
+    crude.targets.forEach((target, index) => {
+      expectClose(result.groups[index]!.se, target.se!, 1e-10, `error ${index}`);
+      expect(result.groups[index]!.df).toBe(target.df);
+    });
+    const [expected] = crude.contrasts;
+    const [contrast] = result.contrasts;
+    expectClose(contrast!.se, expected!.se!, 1e-9, "error of the difference");
+    expectClose(contrast!.covariance, expected!.covariance!, 1e-9, "covariance");
+    expectClose(contrast!.logRatioSe, expected!.logRatioSe!, 1e-9, "error of the log ratio");
+    expectClose(contrast!.logOddsRatioSe, expected!.logOddsRatioSe!, 1e-9, "error of the log odds ratio");
+    expect(contrast!.df).toBe(expected!.df);
   });
 });
 
