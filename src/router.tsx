@@ -1,4 +1,5 @@
 import type { RouteObject } from "react-router-dom";
+import { PageLoading } from "./components/PageLoading.tsx";
 import { NotFoundPage } from "./shell/NotFoundPage.tsx";
 import { RouteError } from "./shell/RouteError.tsx";
 import { Shell } from "./shell/Shell.tsx";
@@ -8,17 +9,20 @@ export const routes: RouteObject[] = [
   {
     path: "/sign-in",
     errorElement: <RouteError />,
+    hydrateFallbackElement: <PageLoading what="the page" />,
     lazy: async () => ({ Component: (await import("./features/session/SignInPage.tsx")).SignInPage }),
   },
   {
     path: "/welcome/:token",
     errorElement: <RouteError />,
+    hydrateFallbackElement: <PageLoading what="the page" />,
     lazy: async () => ({ Component: (await import("./features/session/WelcomePage.tsx")).WelcomePage }),
   },
   {
     path: "/",
     element: <Shell />,
     errorElement: <RouteError />,
+    hydrateFallbackElement: <PageLoading what="the page" />,
     children: [
       { index: true, lazy: async () => ({ Component: (await import("./features/home/HomePage.tsx")).HomePage }) },
       {
