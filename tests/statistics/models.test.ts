@@ -251,6 +251,15 @@ describe("quantiles", () => {
     expect(found.map(({ estimate }) => estimate)).toEqual([1, 2, 2, 5]);
     expect(quantilesOf([1, 2, 3], [1, 1, 8], [0.5])[0]!.estimate).toBe(3);
   });
+  it("of overlapping domains are those each has alone", () => {
+    const rows = fc.sample(anyRows, { numRuns: 1, seed: 9 })[0]!;
+    const { sample, assignment } = buildSample(rows, { isBinary: false });
+    const targets = [{ cells: [0] }, { cells: [0, 1] }, { cells: [1] }];
+    const together = estimateQuantiles(sample, assignment, targets, [0.3, 0.5], 95);
+    targets.forEach((target, index) => {
+      expect(together[index]).toEqual(estimateQuantiles(sample, assignment, [target], [0.3, 0.5], 95)[0]);
+    });
+  });
   it("have no limit beyond the values, and no figure of nobody", () => {
     expect(quantilesOf([1, 2, 3], [1, 1, 1], [0.5])[0]).toMatchObject({ estimate: 2, low: null, high: null });
     const { sample, assignment } = buildSample([{ y: 1, cell: 0 }], { cells: 2, isBinary: false });
