@@ -1,5 +1,6 @@
 import type { ClusterTable } from "./clusterTotals.ts";
-import type { Components } from "./components.ts";
+import type { Components, ComponentsOfCells } from "./components.ts";
+import { singleCellAdder, splitComponents } from "./singleCells.ts";
 import type { VarianceLevel } from "./varianceLevels.ts";
 
 /**
@@ -25,7 +26,7 @@ export function noCovariances(components: number, pairs: Pairs): Covariances {
 }
 
 /** Sums of the components' scores (even places) and weights (odd places) over some clusters. */
-type Sums = Float64Array;
+export type Sums = Float64Array;
 
 /**
  * Adds one stage's share to the covariances. Two passes over each group, first for its means, so that nothing is lost
@@ -50,8 +51,8 @@ export function addCovariances(
   const clusterCount = level.clusterStart.length - 1;
   const groupCount = level.groupStart.length - 1;
   const sumGroup = groupSummer(table, components);
-  const { alone, shared } = splitComponents(components, pairs);
-  const addAlone = loneCellAdder(table, alone, centredMean, mean, clustersWith, own);
+  const { single, shared } = splitComponents(components, pairs);
+  const addSingles = singleCellAdder({ table, single, centredMean, mean, sums, clustersWith, pairs, into });
 
   for (let group = 0; group < groupCount; group++) {
     const factor = level.factor[group]!;
@@ -67,8 +68,10 @@ export function addCovariances(
     for (let place = 0; place < 2 * count; place++) mean[place]! /= end - first;
     clustersWith.fill(0);
     for (let cluster = first; cluster < end; cluster++) {
-      addAlone(factor, cluster);
-      if (shared === null) continue;
+      if (shared === null) {
+        addSingles(factor, cluster);
+        continue;
+      }
       const presentCount = sumEntries(table, shared, cluster, sums, present);
       for (let index = 0; index < presentCount; index++) {
         const k = present[index]!;
@@ -81,6 +84,7 @@ export function addCovariances(
         own[3 * k + 1]! += factor * deviationR * deviationW;
         own[3 * k + 2]! += factor * deviationW * deviationW;
       }
+      addSingles(factor, cluster);
       addProducts(factor, sums, mean, present, presentCount, pairs, into.cross);
       for (let index = 0; index < presentCount; index++) {
         const k = present[index]!;
@@ -100,63 +104,10 @@ export function addCovariances(
   }
 }
 
-/** Where each cell's components are found: those of the cell alone that no pair needs, and the others. */
-interface SplitComponents {
-  /** Component of this cell and no other, or −1. */
-  alone: Int32Array;
-  /** Null where there are no others. */
-  shared: Pick<Components, "cellStart" | "component"> | null;
-}
-
-function splitComponents({ count, cellStart, component }: Components, pairs: Pairs): SplitComponents {
-  const cells = cellStart.length - 1;
-  const cellsOf = new Uint32Array(count);
-  for (const k of component) cellsOf[k]! += 1;
-  const isPaired = new Uint8Array(count);
-  for (let k = 0; k < count; k++) if (pairs.start[k + 1]! > pairs.start[k]!) isPaired[k] = 1;
-  for (const k of pairs.other) isPaired[k] = 1;
-  const alone = new Int32Array(cells).fill(-1);
-  const start = new Uint32Array(cells + 1);
-  const others: number[] = [];
-  for (let cell = 0; cell < cells; cell++) {
-    for (const k of component.subarray(cellStart[cell], cellStart[cell + 1])) {
-      if (cellsOf[k] === 1 && isPaired[k] === 0 && alone[cell] === -1) alone[cell] = k;
-      else others.push(k);
-    }
-    start[cell + 1] = others.length;
-  }
-  return { alone, shared: others.length > 0 ? { cellStart: start, component: Uint32Array.from(others) } : null };
-}
-
-/** Adds one cluster's squares of the components of a cell alone: the cell's entry is all of the component there. */
-function loneCellAdder(
-  { start, cell, weight, score }: ClusterTable,
-  alone: Int32Array,
-  centredMean: Float64Array,
-  mean: Sums,
-  clustersWith: Uint32Array,
-  own: Float64Array,
-): (factor: number, cluster: number) => void {
-  return (factor, cluster) => {
-    const end = start[cluster + 1]!;
-    for (let entry = start[cluster]!; entry < end; entry++) {
-      const k = alone[cell[entry]!]!;
-      if (k < 0) continue;
-      const w = weight[entry]!;
-      const deviationR = score[entry]! - centredMean[k]! * w - mean[2 * k]!;
-      const deviationW = w - mean[2 * k + 1]!;
-      clustersWith[k]! += 1;
-      own[3 * k]! += factor * deviationR * deviationR;
-      own[3 * k + 1]! += factor * deviationR * deviationW;
-      own[3 * k + 2]! += factor * deviationW * deviationW;
-    }
-  };
-}
-
 /** Adds one cluster's entries to its components' sums and lists the components found. Weights are above 0: a sum of 0 is new. */
 function sumEntries(
   table: ClusterTable,
-  { cellStart, component }: Pick<Components, "cellStart" | "component">,
+  { cellStart, component }: ComponentsOfCells,
   cluster: number,
   sums: Sums,
   present: Uint32Array,

@@ -2,10 +2,13 @@ import type { CellTotals } from "./clusterTotals.ts";
 import { type DomainTotals, domainTotals, type Target } from "./domainTotals.ts";
 
 /** Unions of cells whose cluster totals are formed; every target is one of them, or the whole less one of them. */
-export interface Components {
+export interface Components extends ComponentsOfCells {
   count: number;
   domains: DomainTotals[];
-  /** The components of cell c are component[cellStart[c]] to component[cellStart[c + 1] − 1]. */
+}
+
+/** The components of cell c are component[cellStart[c]] to component[cellStart[c + 1] − 1]. */
+export interface ComponentsOfCells {
   cellStart: Uint32Array;
   component: Uint32Array;
 }

@@ -1,6 +1,8 @@
 import type { ClusterTable } from "./clusterTotals.ts";
 import type { Target } from "./domainTotals.ts";
 
+const FEW_CELLS = 32;
+
 /** Finds the PSUs that hold at least one counted respondent of a domain, as a set of bits. */
 export type PresenceOf = (target: Target) => Uint32Array;
 
@@ -8,39 +10,41 @@ export type PresenceOf = (target: Target) => Uint32Array;
 export function presenceFinder(table: ClusterTable, cells: number): PresenceOf {
   const psus = table.start.length - 1;
   const words = Math.ceil(psus / 32);
-  const present = new Uint32Array(cells * words);
-  const anyCell = new Uint32Array(words);
-  const severalCells = new Uint32Array(words);
+  const maskWords = Math.ceil(cells / 32);
+  const psusOfCell = new Uint32Array(cells * words);
+  const cellsOfPsu = new Uint32Array(psus * maskWords);
   for (let psu = 0; psu < psus; psu++) {
     const bit = 1 << (psu & 31);
     const word = psu >>> 5;
-    const first = table.start[psu]!;
+    const mask = psu * maskWords;
     const end = table.start[psu + 1]!;
-    if (end > first) anyCell[word]! |= bit;
-    if (end > first + 1) severalCells[word]! |= bit;
-    for (let entry = first; entry < end; entry++) present[table.cell[entry]! * words + word]! |= bit;
+    for (let entry = table.start[psu]!; entry < end; entry++) {
+      const cell = table.cell[entry]!;
+      psusOfCell[cell * words + word]! |= bit;
+      cellsOfPsu[mask + (cell >>> 5)]! |= 1 << (cell & 31);
+    }
   }
-  return (target) => {
+  return ({ cells: wanted }) => {
     const set = new Uint32Array(words);
-    const left = target.cells.length === cells - 1 ? cellLeftOut(target, cells) : null;
-    if (left !== null) {
-      // Everyone but one cell is absent only where that cell is alone.
-      for (let word = 0; word < words; word++)
-        set[word] = severalCells[word]! | (anyCell[word]! & ~present[left * words + word]!);
+    // By cells where they are few, by PSUs where most have some.
+    if (wanted.length <= FEW_CELLS) {
+      for (const cell of wanted) {
+        const from = cell * words;
+        for (let word = 0; word < words; word++) set[word]! |= psusOfCell[from + word]!;
+      }
       return set;
     }
-    for (const cell of target.cells) {
-      for (let word = 0; word < words; word++) set[word]! |= present[cell * words + word]!;
+    const mask = new Uint32Array(maskWords);
+    for (const cell of wanted) mask[cell >>> 5]! |= 1 << (cell & 31);
+    for (let psu = 0; psu < psus; psu++) {
+      for (let word = 0; word < maskWords; word++) {
+        if ((cellsOfPsu[psu * maskWords + word]! & mask[word]!) === 0) continue;
+        set[psu >>> 5]! |= 1 << (psu & 31);
+        break;
+      }
     }
     return set;
   };
-}
-
-function cellLeftOut(target: Target, cells: number): number | null {
-  const inside = new Uint8Array(cells);
-  for (const cell of target.cells) inside[cell] = 1;
-  const missing = inside.indexOf(0);
-  return inside.indexOf(0, missing + 1) === -1 ? missing : null;
 }
 
 /** PSUs in either set. */
