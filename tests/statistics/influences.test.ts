@@ -1,8 +1,9 @@
 import { describe, expect, it } from "vitest";
 import { adjust } from "../../server/statistics/adjusted.ts";
 import { association } from "../../server/statistics/association.ts";
+import { attributable } from "../../server/statistics/attributable.ts";
 import { estimateTargets } from "../../server/statistics/estimate.ts";
-import { attributable, inequality } from "../../server/statistics/inequality.ts";
+import { inequality } from "../../server/statistics/inequality.ts";
 import { standardise } from "../../server/statistics/standardise.ts";
 import { trend } from "../../server/statistics/trend.ts";
 import type { Assignment, Sample } from "../../server/statistics/types.ts";
@@ -97,8 +98,15 @@ const functions: [string, Way, (sample: Sample, assignment: Assignment, way: Way
     "inequality",
     groupsOnly,
     (sample, assignment) => {
-      const { slopeIndex, relativeIndex } = inequality(sample, assignment, [0, 1, 2], 95);
-      return [slopeIndex.se, relativeIndex.se];
+      const indexes = inequality(sample, assignment, [0, 1, 2], 95);
+      return [
+        indexes.slopeIndex,
+        indexes.relativeIndex,
+        indexes.logisticSlopeIndex,
+        indexes.logisticRelativeIndex,
+        indexes.absoluteConcentration,
+        indexes.relativeConcentration,
+      ].map(({ se }) => se);
     },
   ],
   [

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { association } from "../../server/statistics/association.ts";
-import { attributable, inequality } from "../../server/statistics/inequality.ts";
+import { attributable } from "../../server/statistics/attributable.ts";
+import { inequality } from "../../server/statistics/inequality.ts";
 import { buildSample, type Row } from "./support/buildSample.ts";
 import { expectClose } from "./support/close.ts";
 import { load } from "./support/published.ts";
@@ -20,16 +21,21 @@ describe("slope and relative index of inequality", () => {
     // O'Donnell, van Doorslaer, Wagstaff & Lindelow. Analyzing Health Equity Using Household Survey Data. World Bank,
     // 2008, Table 8.1 (inputs quoted from memory; the line through them recomputed).
     const { sample, assignment } = groupsOf([29939, 28776, 26528, 24689, 19739], [154.7, 152.9, 119.5, 86.9, 54.3]);
-    const { slopeIndex, relativeIndex } = inequality(sample, assignment, FIVE, 95);
+    const { slopeIndex, relativeIndex, relativeConcentration } = inequality(sample, assignment, FIVE, 95);
     expect(slopeIndex.estimate).toBeCloseTo(-126.19833, 5);
     expect(relativeIndex.estimate).toBeCloseTo(0.30662673, 8);
+    expect(relativeConcentration.estimate).toBeCloseTo(-0.16941677, 8);
   });
 
   it("fit five equal groups", () => {
     const { sample, assignment } = groupsOf([1, 1, 1, 1, 1], [0.31, 0.43, 0.5, 0.61, 0.8]);
-    const { slopeIndex, relativeIndex } = inequality(sample, assignment, FIVE, 95);
-    expect(slopeIndex.estimate).toBeCloseTo(0.58, 12);
-    expect(relativeIndex.estimate).toBeCloseTo(3.416667, 6);
+    const indexes = inequality(sample, { ...assignment, isBinary: true }, FIVE, 95);
+    expect(indexes.slopeIndex.estimate).toBeCloseTo(0.58, 12);
+    expect(indexes.relativeIndex.estimate).toBeCloseTo(3.416667, 6);
+    expect(indexes.logisticSlopeIndex.estimate).toBeCloseTo(0.550813, 6);
+    expect(indexes.logisticRelativeIndex.estimate).toBeCloseTo(3.221087, 6);
+    expect(indexes.absoluteConcentration.estimate).toBeCloseTo(0.0928, 12);
+    expect(indexes.relativeConcentration.estimate).toBeCloseTo(0.1750943, 7);
     // Handbook on health inequality monitoring (WHO 2013): 27 points and 50.9 % to the best group; here as excess, not lack.
     const { risk, fraction, overall } = attributable(sample, assignment, 4, 95);
     expect(overall).toBeCloseTo(0.53, 12);

@@ -1,7 +1,8 @@
 import { describe, expect, it } from "vitest";
 import { reliabilityOfShare } from "../../server/statistics/reliability.ts";
 import { standardise } from "../../server/statistics/standardise.ts";
-import { STANDARDS, weightsForBands } from "../../server/statistics/standards.ts";
+import { STANDARDS } from "../../shared/standards.ts";
+import { weightsForBands } from "../../server/statistics/standards.ts";
 import { buildSample, type Row } from "./support/buildSample.ts";
 import { expectClose } from "./support/close.ts";
 import { load, options } from "./support/published.ts";

@@ -1,7 +1,8 @@
 import { describe, expect, it } from "vitest";
 import { adjust, type Covariate } from "../../server/statistics/adjusted.ts";
 import { association } from "../../server/statistics/association.ts";
-import { attributable, inequality } from "../../server/statistics/inequality.ts";
+import { attributable } from "../../server/statistics/attributable.ts";
+import { inequality } from "../../server/statistics/inequality.ts";
 import type { Level } from "../../server/statistics/intervals.ts";
 import { estimateQuantiles } from "../../server/statistics/quantiles.ts";
 import { standardise } from "../../server/statistics/standardise.ts";
