@@ -5,9 +5,6 @@ import { type CellDesign, type Fit, fitCells, respond } from "./regression.ts";
 import { SeparationError, SingularFitError } from "./errors.ts";
 import type { Assignment, Sample } from "./types.ts";
 
-export { attributable } from "./attributable.ts";
-export type { Measure } from "./measure.ts";
-
 /** Inequality over groups from the lowest to the highest rank. A measure is undefined where its formula is. */
 export interface Inequality {
   /** Fitted difference between rank 1 and rank 0 of a straight line. */
