@@ -61,13 +61,30 @@ export function populationWords(among: Rule | undefined, variables: Variables): 
   return among ? `people with ${ruleWords(among, variables)}` : "people";
 }
 
+const ORDINALS: Record<number, string> = { 0.25: "lower quartile", 0.5: "median", 0.75: "upper quartile" };
+
+/** What is worked out of a numeric outcome: “mean”, “median”, “90th percentile”. */
+export function averageWords(outcome: Outcome): string {
+  if ("rule" in outcome || outcome.quantile === undefined) return "mean";
+  return ORDINALS[outcome.quantile] ?? `${Number((100 * outcome.quantile).toPrecision(6))}th percentile`;
+}
+
+/** What figures are standardised or adjusted for; null where they are crude. */
+export function correctionWords(
+  { standardise, adjustFor }: Pick<Question, "standardise" | "adjustFor">,
+  variables: Variables,
+): string | null {
+  if (standardise) return `Standardised for ${breakdownWords([standardise], variables)}.`;
+  return adjustFor.length > 0 ? `Adjusted for ${breakdownWords(adjustFor, variables)}.` : null;
+}
+
 /** What is counted, or what is averaged. */
 export function outcomeWords(outcome: Outcome, variables: Variables): string {
   return "rule" in outcome ? ruleWords(outcome.rule, variables) : variableLabel(variables, outcome.variable);
 }
 
 /** What a table is split by along one side; empty where it isn't. */
-export function breakdownWords(breakdowns: readonly Breakdown[], variables: Variables): string {
+export function breakdownWords(breakdowns: readonly Pick<Breakdown, "variable" | "bands">[], variables: Variables): string {
   return joinWords(
     breakdowns.map(({ variable, bands }) => `${variableLabel(variables, variable)}${bands ? " in bands" : ""}`),
     "and",
@@ -99,12 +116,13 @@ export function questionSentence(question: Question, { surveyTitle, wave, variab
   const population = populationWords(question.among, variables);
   const outcome = outcomeWords(question.outcome, variables);
   const asked = isMean
-    ? `In ${surveyTitle}, ${wave}, among ${population}, what is the mean of ${outcome}?`
+    ? `In ${surveyTitle}, ${wave}, among ${population}, what is the ${averageWords(question.outcome)} of ${outcome}?`
     : `In ${surveyTitle}, ${wave}, of every 100 ${population}, how many have ${outcome}?`;
   const down = breakdownWords(question.down, variables);
   const across = breakdownWords(question.across, variables);
   const sides = [down && `${down} down`, across && `${across} across`].filter((side) => side !== "");
   const split = sides.length > 0 ? ` Split by ${sides.join(" and ")}.` : "";
   const reference = comparisonWords(question.comparison, variables, [...question.down, ...question.across], isMean);
-  return `${asked}${split}${reference ? ` Compared with ${reference}.` : ""}`;
+  const corrected = correctionWords(question, variables);
+  return [`${asked}${split}`, reference && `Compared with ${reference}.`, corrected].filter((part) => part !== null).join(" ");
 }

@@ -32,8 +32,17 @@ function adjusted(nodes: readonly AnsweredNode[], method: Question["adjustment"]
   return new Map(family.map((node, i) => [node, values[i] ?? null]));
 }
 
-function reliabilityOf(node: AnsweredNode, measure: Table["measure"]): Reliability {
-  return measure === "share" ? reliabilityOfShare(node.estimate) : reliabilityOfMean(node.estimate);
+/** Of a quantile there is no standard error to judge by: its interval says what is known. */
+function reliabilityOf({ estimate }: AnsweredNode, { outcome, standardise, adjustFor }: Question): Reliability {
+  if ("rule" in outcome) {
+    const isCrude = standardise === undefined && adjustFor.length === 0;
+    return reliabilityOfShare(isCrude ? estimate : { ...estimate, affectedRespondents: null });
+  }
+  if (outcome.quantile === undefined) return reliabilityOfMean(estimate);
+  const hasInterval = estimate.low !== null && estimate.high !== null;
+  return hasInterval
+    ? { verdict: "reliable", reasons: [] }
+    : { verdict: "caution", reasons: ["a limit lies beyond the values seen"] };
 }
 
 function presentComparison(contrast: ContrastEstimate, pAdjusted: number | null, level: number): ComparisonResult {
@@ -64,7 +73,7 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
   const present = (node: AnsweredNode): Cell => {
     const key = node.key.map((value, axis) => (value === null ? null : frame.breakdowns[axis]!.values[value]!.code));
     if (node.withheld !== null) return { key, shown: false, reason: node.withheld };
-    const reliability = reliabilityOf(node, measure);
+    const reliability = reliabilityOf(node, question);
     if (frame.hidesUnreliable && reliability.verdict === "unreliable") return { key, shown: false, reason: "unreliable" };
     const { estimate } = node;
     return {
@@ -100,6 +109,7 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
     whole,
     cells: cells.map(present),
     margins: margins.filter((node) => node.kind === "margin").map(present),
+    overall: answer.overall,
     familySize,
     caption: frame.caption,
     notes: frame.notes(familySize),

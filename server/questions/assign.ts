@@ -94,13 +94,14 @@ function applyAxis(axis: AxisPlan, columns: Columns, cell: Int32Array): void {
 }
 
 /**
- * Base cell and outcome of every respondent. Cells are numbered with the first axis slowest, each axis one slot wider
+ * Base cell and outcome of every respondent. Cells are numbered with the first axis slowest, the one to standardise by last, each axis one slot wider
  * than its groups for those without a value. Outside the population, without an outcome, or of weight 0: −1.
  */
 export function assign(plan: Plan, columns: Columns, weight: Float64Array): Assignment {
   const rows = weight.length;
   const cell = new Int32Array(rows);
-  for (const axis of plan.axes) applyAxis(axis, columns, cell);
+  const axes = plan.standard ? [...plan.axes, plan.standard.axis] : plan.axes;
+  for (const axis of axes) applyAxis(axis, columns, cell);
   const isBinary = plan.outcome.measure === "share";
   const outcome =
     plan.outcome.measure === "share" ? evaluate(plan.outcome.test, columns, rows) : numbers(plan.outcome.source, columns, rows);
@@ -110,5 +111,12 @@ export function assign(plan: Plan, columns: Columns, weight: Float64Array): Assi
     const isKnown = isBinary ? value !== UNKNOWN : value === value;
     if (!isKnown || !(weight[row]! > 0) || (among !== null && among[row] !== TRUE)) cell[row] = -1;
   }
-  return { cell, cells: plan.axes.reduce((product, axis) => product * (axis.values + 1), 1), outcome, isBinary };
+  return { cell, cells: axes.reduce((product, axis) => product * (axis.values + 1), 1), outcome, isBinary };
+}
+
+/** Value of every respondent on one axis, −1 for none: a covariate's code. */
+export function codesOf(axis: AxisPlan, columns: Columns, rows: number): Int32Array {
+  const codes = new Int32Array(rows);
+  applyAxis(axis, columns, codes);
+  return codes.map((code) => (code === axis.values ? -1 : code));
 }

@@ -2,6 +2,8 @@ import type { Breakdown, Question } from "../../shared/contracts/questions.ts";
 import { ruleVariables, type Rule } from "../../shared/rules.ts";
 import { AppError } from "../errors.ts";
 import type { CodebookVariable } from "../microdata/codebook.ts";
+import { STANDARDS } from "../../shared/standards.ts";
+import { weightsForBands } from "../statistics/standards.ts";
 import { FALSE, TRUE, UNKNOWN, type AxisPlan, type NumberSource, type OutcomePlan, type Plan, type Test } from "./plan.ts";
 
 /** A table of more base cells than this (missing values count as one more of each breakdown) isn't readable, nor quick. */
@@ -139,12 +141,45 @@ function compileAxis(variable: CodebookVariable, breakdown: Breakdown, path: str
   return { plan, values: named.map(({ code, label }) => ({ code, label: label || code })) };
 }
 
+/** The axis that figures are standardised for, with its weights. */
+function compileStandard(codebook: Codebook, question: Question): Plan["standard"] {
+  const { standardise } = question;
+  if (!standardise) return null;
+  const path = "standardise.variable";
+  const { plan: axis } = compileAxis(lookUp(codebook, standardise.variable, path), standardise, path);
+  if ("own" in standardise.weights) {
+    const { own } = standardise.weights;
+    if (own.length !== axis.values)
+      throw refuse("standardise.weights.own", `There are ${axis.values} groups to standardise by and ${own.length} weights.`);
+    if (!own.some((weight) => weight > 0)) throw refuse("standardise.weights.own", "At least one weight must be above 0.");
+    return { axis, weights: own };
+  }
+  const { standard: id } = standardise.weights;
+  const standard = STANDARDS.find((known) => known.id === id);
+  if (!standard) throw refuse("standardise.weights.standard", "There is no standard population of this name.");
+  if (!standardise.bands) throw refuse("standardise.weights.standard", "A published standard needs bands of whole years of age.");
+  const weights = weightsForBands(
+    standard,
+    standardise.bands.map(([from, to]) => ({ from: from ?? 0, to })),
+  );
+  if (!weights)
+    throw refuse(
+      "standardise.bands",
+      `These bands cut through those of the standard (${standard.label}). Let them begin and end where its bands do.`,
+    );
+  return { axis, weights: weights.weights };
+}
+
 /** Names of every variable a question reads, each once. */
 export function questionVariables(question: Question): string[] {
   const outcome = "rule" in question.outcome ? ruleVariables(question.outcome.rule) : [question.outcome.variable];
   const among = question.among ? ruleVariables(question.among) : [];
   const breakdowns = [...question.down, ...question.across].map((breakdown) => breakdown.variable);
-  return [...new Set([...outcome, ...among, ...breakdowns])];
+  const further = [
+    ...(question.standardise ? [question.standardise.variable] : []),
+    ...question.adjustFor.map(({ variable }) => variable),
+  ];
+  return [...new Set([...outcome, ...among, ...breakdowns, ...further])];
 }
 
 /**
@@ -164,7 +199,15 @@ export function compileQuestion(question: Question, variables: readonly Codebook
       breakdowns.push({ name: variable.name, label: variable.label || variable.name, axis, values });
     });
   }
-  const cells = axes.reduce((product, axis) => product * (axis.values + 1), 1);
+  const standard = compileStandard(codebook, question);
+  const covariates = question.adjustFor.map((breakdown, i) => {
+    const path = `adjustFor.${i}`;
+    return compileAxis(lookUp(codebook, breakdown.variable, path), breakdown, path).plan;
+  });
+  const cells = [...axes, ...(standard ? [standard.axis] : []), ...covariates].reduce(
+    (product, axis) => product * (axis.values + 1),
+    1,
+  );
   if (cells > CELL_LIMIT)
     throw refuse(
       "down",
@@ -173,7 +216,8 @@ export function compileQuestion(question: Question, variables: readonly Codebook
   checkReferenceGroup(question, breakdowns);
   const outcome = compileOutcome(codebook, question);
   const among = question.among ? compileRule(codebook, question.among, "among") : null;
-  return { plan: { columns: questionVariables(question), among, outcome, axes }, breakdowns };
+  const quantile = "variable" in question.outcome ? (question.outcome.quantile ?? null) : null;
+  return { plan: { columns: questionVariables(question), among, outcome, axes, standard, covariates, quantile }, breakdowns };
 }
 
 function checkReferenceGroup(question: Question, breakdowns: readonly CompiledBreakdown[]): void {

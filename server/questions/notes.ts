@@ -1,3 +1,4 @@
+import { STANDARDS } from "../../shared/standards.ts";
 import type { Design } from "../../shared/contracts/design.ts";
 import type { Question } from "../../shared/contracts/questions.ts";
 
@@ -50,12 +51,34 @@ function comparisonNote(question: Question, familySize: number): string[] {
   ];
 }
 
+/** How figures were standardised or adjusted; empty where they are crude. */
+function correctionNote({ standardise, adjustFor }: Question): string[] {
+  if (standardise) {
+    const { weights } = standardise;
+    const standard = "standard" in weights ? STANDARDS.find(({ id }) => id === weights.standard) : undefined;
+    const by = standard
+      ? `the ${standard.label} (${standard.source})`
+      : `weights of one's own: ${"own" in weights ? weights.own.join(", ") : ""}`;
+    return [
+      `Directly standardised for ${standardise.variable} by ${by}; a group with nobody in a band has no figure. Totals of people are crude.`,
+    ];
+  }
+  if (adjustFor.length === 0) return [];
+  const names = adjustFor.map(({ variable }) => variable).join(", ");
+  return [
+    `Adjusted for ${names}: predictive margins of a design-based regression (logistic for shares; Graubard and Korn 1999), with the sampling of those variables counted. Respondents without a value of them are left out; totals of people are crude.`,
+  ];
+}
+
 /** How a table was worked out and how to read it, as sentences; they stand under it and in every export. */
 export function tableNotes(question: Question, design: Design, measure: "share" | "mean", familySize: number): string[] {
-  const interval = measure === "share" ? INTERVALS[question.interval] : "linear intervals";
+  const isQuantile = "variable" in question.outcome && question.outcome.quantile !== undefined;
+  const interval =
+    measure === "share" ? INTERVALS[question.interval] : isQuantile ? "Woodruff intervals (1952)" : "linear intervals";
   return [
     designNote(design),
     `${question.level} % ${interval}; t with the subgroup's own degrees of freedom (PSUs less strata that hold its respondents).`,
+    ...correctionNote(question),
     ...comparisonNote(question, familySize),
     measure === "share"
       ? "Reliability after the NCHS data presentation standards for proportions (Parker et al. 2017)."

@@ -6,6 +6,12 @@ export interface Plan {
   outcome: OutcomePlan;
   /** Down first, then across. */
   axes: AxisPlan[];
+  /** What figures are standardised for, one weight for each of its values. */
+  standard: { axis: AxisPlan; weights: number[] } | null;
+  /** What figures are adjusted for. */
+  covariates: AxisPlan[];
+  /** Of a numeric outcome; null for its mean. */
+  quantile: number | null;
 }
 
 /** Truth of a row as Kleene's logic has it. */

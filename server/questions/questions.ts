@@ -4,7 +4,7 @@ import type { Question } from "../../shared/contracts/questions.ts";
 import type { Table } from "../../shared/contracts/tables.ts";
 import type { Config } from "../config.ts";
 import { AppError } from "../errors.ts";
-import type { CodebookVariable } from "../microdata/codebook.ts";
+import { numberOfCode, type CodebookVariable } from "../microdata/codebook.ts";
 import { ColumnCache } from "../microdata/columnCache.ts";
 import { workerOptions } from "../microdata/workers.ts";
 import type { Release } from "../models/Release.ts";
@@ -20,6 +20,8 @@ import { fitsComplements, type Answer, type Work } from "./work.ts";
 /** Names the way of computing in every answer; raised whenever a figure could come out otherwise. */
 export const ENGINE = "Perhundred engine 1";
 const ANSWERS_KEPT = 500;
+/** Failures of the engine that tell the reader something. */
+const HONEST = new Set(["DesignError", "SeparationError", "SingularFitError"]);
 
 /** What a release is to the questions part. */
 export interface AskedRelease {
@@ -42,6 +44,14 @@ export interface Questions {
 
 const numberOfValues = (compiled: CompiledQuestion, axis: "down" | "across") =>
   compiled.breakdowns.filter((breakdown) => breakdown.axis === axis).map((breakdown) => breakdown.values.length);
+
+/** Score of each group of a single breakdown: the numbers that its codes spell, or 1, 2, … where some spell none. */
+function scoresOf({ breakdowns }: CompiledQuestion): number[] {
+  const [breakdown, second] = breakdowns;
+  if (!breakdown || second) return [];
+  const scores = breakdown.values.map(({ code }) => numberOfCode(code));
+  return scores.some(Number.isNaN) ? scores.map((_, i) => i + 1) : scores;
+}
 
 /** Gathers what a worker needs; also the way in for checks that run the work in their own thread. */
 export async function prepareWork(
@@ -74,6 +84,8 @@ export async function prepareWork(
     options: { level: question.level, interval: question.interval, difference: question.difference, comparison },
     groupAxis,
     groupValue,
+    overall: question.overall,
+    scores: scoresOf(compiled),
     minimums: source.minimums,
   };
 }
@@ -107,7 +119,7 @@ export function createQuestions(parts: { config: Config; columns: ColumnCache })
     try {
       return await pool.run(prepared);
     } catch (error) {
-      if (error instanceof Error && error.name === "DesignError") throw new AppError("unprocessable", error.message);
+      if (error instanceof Error && HONEST.has(error.name)) throw new AppError("unprocessable", error.message);
       throw error;
     }
   }

@@ -1,16 +1,13 @@
 import type { DisclosureMinimums } from "../../shared/contracts/design.ts";
 import type { Question } from "../../shared/contracts/questions.ts";
-import {
-  estimateTargets,
-  type ContrastEstimate,
-  type ContrastRequest,
-  type Target,
-  type TargetEstimate,
-} from "../statistics/estimate.ts";
-import type { Sample } from "../statistics/types.ts";
-import { assign, type Columns } from "./assign.ts";
+import type { OverallResult } from "../../shared/contracts/tables.ts";
+import type { ContrastEstimate, ContrastRequest, Target, TargetEstimate } from "../statistics/estimate.ts";
+import type { Assignment, Sample } from "../statistics/types.ts";
+import { assign, codesOf, type Columns } from "./assign.ts";
 import { isTooFew, type Counts } from "./disclosure/counts.ts";
 import { suppress, type Withholding } from "./disclosure/suppress.ts";
+import { figuresOf } from "./figures.ts";
+import { overallOf, type OverallInput } from "./overall.ts";
 import { comparisonsOf, tableShape, type TableNode } from "./nodes.ts";
 import type { Plan } from "./plan.ts";
 
@@ -26,6 +23,9 @@ export interface Work {
   /** Axis and value index of a `group` comparison; −1 otherwise. */
   groupAxis: number;
   groupValue: number;
+  /** What is asked of the table as a whole, and the score of each of its groups, for a single breakdown. */
+  overall: Question["overall"];
+  scores: number[];
   /** Null: nothing is withheld (checks against reference results only). */
   minimums: DisclosureMinimums | null;
 }
@@ -43,6 +43,8 @@ export interface AnsweredNode {
 export interface Answer {
   designDf: number;
   nodes: AnsweredNode[];
+  /** Empty too where a cell is withheld: what is said of all groups together could give it away. */
+  overall: OverallResult[];
 }
 
 /** Complements cost a list of base cells for each figure; past this many entries a table is refused. */
@@ -91,7 +93,19 @@ export async function answer(work: Work): Promise<Answer> {
   });
   const isBinary = assignment.isBinary;
   const { level, interval, difference } = work.options;
-  const result = estimateTargets(work.sample, assignment, targets, requests, { level, interval, difference, isBinary });
+  const rows = work.sample.weight.length;
+  const covariates = work.plan.covariates.map((axis) => ({ codes: codesOf(axis, work.columns, rows), levels: axis.values }));
+  const result = figuresOf({
+    sample: work.sample,
+    assignment,
+    targets,
+    contrasts: requests,
+    options: { level, interval, difference, isBinary },
+    standard: work.plan.standard?.weights ?? null,
+    covariates,
+    levels: levelsOf(shape.nodes),
+    quantile: work.plan.quantile,
+  });
   const estimates = result.targets.slice(0, shape.nodes.length);
   const countsOf = ({ respondents, affectedRespondents }: TargetEstimate): Counts => ({
     respondents,
@@ -113,7 +127,37 @@ export async function answer(work: Work): Promise<Answer> {
     const contrast = request === undefined || isHidden(requests[request]!.from) ? null : result.contrasts[request]!;
     return { key, kind, estimate: estimates[node]!, withheld: withheld[node]!, contrast };
   });
-  return { designDf: result.designDf, nodes };
+  const isAnyHidden = nodes.some(({ withheld: reason }) => reason === "too-few" || reason === "protects-another");
+  const overall = isAnyHidden || work.overall.length === 0 ? [] : overallOf(overallInput(work, shape.nodes, assignment));
+  return { designDf: result.designDf, nodes, overall };
+}
+
+/** Figures that together split everyone into groups: those with values on the same axes. */
+function levelsOf(nodes: readonly TableNode[]): number[][] {
+  const levels = new Map<string, number[]>();
+  nodes.forEach(({ key }, node) => {
+    const pattern = key.map((value) => (value === null ? "*" : "x")).join("");
+    levels.set(pattern, [...(levels.get(pattern) ?? []), node]);
+  });
+  return [...levels.values()];
+}
+
+/** The table's groups as cells of their own, whatever else splits the base cells. */
+function overallInput(work: Work, nodes: readonly TableNode[], assignment: Assignment): OverallInput {
+  const groups = nodes.filter(({ kind }) => kind === "cell");
+  const slots = work.plan.standard ? work.plan.standard.weights.length + 1 : 1;
+  const groupOf = new Int32Array(assignment.cells).fill(-1);
+  groups.forEach(({ cells }, group) => {
+    for (const cell of cells) groupOf.fill(group, cell * slots, (cell + 1) * slots);
+  });
+  return {
+    sample: work.sample,
+    assignment: { ...assignment, cells: groups.length, cell: assignment.cell.map((cell) => (cell < 0 ? -1 : groupOf[cell]!)) },
+    kinds: work.overall,
+    level: work.options.level,
+    scores: work.scores,
+    reference: work.groupValue,
+  };
 }
 
 /** The worker's entry. */

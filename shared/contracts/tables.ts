@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { Question } from "./questions.ts";
+import { OverallKind, Question } from "./questions.ts";
 
 /** Can the figure be read? NCHS presentation standards for proportions (Series 2 no. 175) and their kin for means. */
 export const Verdict = z.enum(["reliable", "caution", "unreliable"]);
@@ -66,6 +66,29 @@ export type WithheldCell = z.infer<typeof WithheldCell>;
 export const Cell = z.discriminatedUnion("shown", [ShownCell, WithheldCell]);
 export type Cell = z.infer<typeof Cell>;
 
+/** Something said of the table as a whole; null where undefined. */
+export const OverallResult = z.strictObject({
+  kind: OverallKind,
+  title: z.string(),
+  /** What it means, as a sentence. */
+  meaning: z.string(),
+  figures: z.array(
+    z.strictObject({
+      name: z.string(),
+      /** `points`: a difference of shares; `value`: in the outcome's own units; `ratio` and `number` have none. */
+      unit: z.enum(["share", "points", "value", "ratio", "number"]),
+      estimate: z.number().nullable(),
+      se: z.number().nullable(),
+      low: z.number().nullable(),
+      high: z.number().nullable(),
+    }),
+  ),
+  p: z.number().nullable(),
+  /** Denominator's degrees of freedom. */
+  df: z.number().nullable(),
+});
+export type OverallResult = z.infer<typeof OverallResult>;
+
 export const Table = z.strictObject({
   question: Question,
   release: z.strictObject({
@@ -92,6 +115,7 @@ export const Table = z.strictObject({
   cells: z.array(Cell),
   /** Subtotals: a run of leading down values by a run of leading across values, null for the rest. */
   margins: z.array(Cell),
+  overall: z.array(OverallResult),
   /** Comparisons the p-values are adjusted over. */
   familySize: z.number().int(),
   /** Question, source, method and cautions as sentences; every export carries them. */

@@ -1,6 +1,7 @@
 /** Relative tolerances (STATISTICS §10): estimates and SEs, intervals and p-values, fits. */
 export const EXACT = 1e-9;
 export const INTERVAL = 1e-6;
+export const FIT = 1e-7;
 
 /** Collects what differs between the product's figures and the expected ones, and which expected fields were not looked at. */
 export class Comparison {

@@ -1,5 +1,14 @@
 import { readCases, type ReferenceCase } from "./cases.ts";
 import type { Comparison } from "./compare.ts";
+import {
+  checkAdjusted,
+  checkAssociation,
+  checkAttributable,
+  checkInequality,
+  checkQuantiles,
+  checkStandardised,
+  checkTrend,
+} from "./models.ts";
 import { checkTable } from "./tables.ts";
 
 /** How each kind of case is checked; a kind without an entry is `not yet`. */
@@ -8,6 +17,13 @@ const KINDS: Readonly<Record<string, (reference: ReferenceCase, folder: string) 
   mean: checkTable,
   comparison: checkTable,
   "two-group-mean": checkTable,
+  association: checkAssociation,
+  standardised: checkStandardised,
+  trend: checkTrend,
+  adjusted: checkAdjusted,
+  attributable: checkAttributable,
+  inequality: checkInequality,
+  quantile: checkQuantiles,
 };
 
 const DIFFERENCES_PRINTED = 5;

@@ -1,12 +1,16 @@
 import type { UseQueryResult } from "@tanstack/react-query";
 import { useState } from "react";
+import type { VariableView } from "../../../shared/contracts/codebook.ts";
 import type { Table } from "../../../shared/contracts/tables.ts";
 import { formatCounted } from "../../../shared/format.ts";
 import type { NamedVariable } from "../../../shared/wording.ts";
 import type { Ask, View } from "./address.ts";
+import { CorrectionTool } from "./CorrectionTool.tsx";
 import type { Draft } from "./draft.ts";
 import type { Measure } from "./measures.ts";
 import { DifferenceTool, IntervalTool, MeasuresTool, OrderTool } from "./MethodTools.tsx";
+import { OverallResults } from "./OverallResults.tsx";
+import { OverallTool } from "./OverallTool.tsx";
 import { cellsById, groupName, type CellId } from "./pivot.ts";
 import { PivotTable } from "./PivotTable.tsx";
 import { PlotView } from "./PlotView.tsx";
@@ -22,6 +26,8 @@ export interface AnswerProps {
   view: View;
   measures: readonly Measure[];
   variables: readonly NamedVariable[];
+  /** Those that may be asked of. */
+  askableVariables: readonly VariableView[];
   selected: CellId;
   onSelect: (id: CellId) => void;
   onChange: (changes: Partial<Draft>) => void;
@@ -44,7 +50,18 @@ function ReadingStrip({ table, selected }: { table: Table; selected: CellId }) {
 }
 
 /** How the answer stands: being worked out, refused, or there in one of its views. */
-export function Answer({ query, draft, view, measures, variables, selected, onSelect, onChange, onLook }: AnswerProps) {
+export function Answer({
+  query,
+  draft,
+  view,
+  measures,
+  variables,
+  askableVariables,
+  selected,
+  onSelect,
+  onChange,
+  onLook,
+}: AnswerProps) {
   const [sortMeasure, setSortMeasure] = useState<SortMeasure>("estimate");
   const table = query.data;
   const isStale = query.isPlaceholderData;
@@ -61,6 +78,8 @@ export function Answer({ query, draft, view, measures, variables, selected, onSe
           <ViewChoice view={view} hasComparison={draft.comparison.kind !== "none"} onChange={(view) => onLook({ view })} />
           <IntervalTool draft={draft} onChange={onChange} />
           <DifferenceTool draft={draft} onChange={onChange} />
+          <CorrectionTool draft={draft} variables={askableVariables} onChange={onChange} />
+          <OverallTool draft={draft} onChange={onChange} />
           {view === "table" && <MeasuresTool measures={measures} onChange={(measures) => onLook({ measures })} />}
           {view === "table" && <OrderTool measure={sortMeasure} onChange={setSortMeasure} />}
         </div>
@@ -77,6 +96,7 @@ export function Answer({ query, draft, view, measures, variables, selected, onSe
           ) : (
             <PlotView table={table} view={view} variables={variables} selected={selected} onSelect={onSelect} />
           )}
+          <OverallResults table={table} />
           <TableFoot table={table} />
           <ReadingStrip table={table} selected={selected} />
         </div>

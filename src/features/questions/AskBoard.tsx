@@ -69,6 +69,7 @@ export function AskBoard({ releases }: { releases: readonly AskableRelease[] }) 
           view={ask.view}
           measures={ask.measures}
           variables={known}
+          askableVariables={variables}
           selected={selected}
           onSelect={setChosen}
           onChange={change}

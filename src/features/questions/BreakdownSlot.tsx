@@ -59,7 +59,8 @@ function ChosenBreakdowns({ variables, breakdowns, onChange, onBands }: Breakdow
   );
 }
 
-function BreakdownChooser(props: BreakdownProps & { onDone: () => void }) {
+/** Breakdowns to choose, order and take out. */
+export function BreakdownChooser(props: BreakdownProps & { onDone: () => void }) {
   const { variables, breakdowns, taken, most, onChange, onDone } = props;
   const [isAdding, setIsAdding] = useState(breakdowns.length === 0);
   const [name, setName] = useState<string | null>(null);

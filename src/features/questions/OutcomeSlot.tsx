@@ -5,6 +5,7 @@ import type { Outcome } from "../../../shared/contracts/questions.ts";
 import { outcomeWords } from "../../../shared/wording.ts";
 import { Button } from "../../components/Button.tsx";
 import { RadioChoices } from "../../components/RadioChoices.tsx";
+import { Select } from "../../components/Select.tsx";
 import { ConditionEditor, type Condition } from "./ConditionEditor.tsx";
 import { SearchList } from "./SearchList.tsx";
 import { Slot } from "./Slot.tsx";
@@ -39,9 +40,19 @@ interface EditorProps {
   onUse: (outcome: Outcome) => void;
 }
 
+const QUANTILES = [
+  { id: "0.1", label: "10th percentile" },
+  { id: "0.25", label: "Lower quartile" },
+  { id: "0.5", label: "Median" },
+  { id: "0.75", label: "Upper quartile" },
+  { id: "0.9", label: "90th percentile" },
+];
+
 function OutcomeEditor({ variable, outcome, onUse }: EditorProps) {
   const condition = conditionOf(outcome, variable.name);
-  const [as, setAs] = useState<"mean" | "share">(condition ? "share" : "mean");
+  const quantile = outcome && "variable" in outcome && outcome.variable === variable.name ? outcome.quantile : undefined;
+  const [as, setAs] = useState<"mean" | "quantile" | "share">(condition ? "share" : quantile === undefined ? "mean" : "quantile");
+  const [at, setAt] = useState(String(quantile ?? 0.5));
   const editor = (
     <ConditionEditor
       variable={variable}
@@ -59,15 +70,27 @@ function OutcomeEditor({ variable, outcome, onUse }: EditorProps) {
           label="What to work out"
           choices={[
             { value: "mean", label: "Its mean", detail: "The average in the variable's own units." },
+            {
+              value: "quantile",
+              label: "Its median or another quantile",
+              detail: "The value that half of the people, say, lie below; not moved by a few extreme ones.",
+            },
             { value: "share", label: "How many are in a range", detail: "Of every 100, such as those at 13 or above." },
           ]}
           value={as}
           onChange={setAs}
         />
       </div>
-      {as === "share" ? (
-        editor
-      ) : (
+      {as === "share" && editor}
+      {as === "quantile" && (
+        <div className="space-y-4 px-4 pb-4">
+          <Select label="Quantile" choices={QUANTILES} value={at} onChange={setAt} />
+          <Button kind="primary" onPress={() => onUse({ variable: variable.name, quantile: Number(at) })}>
+            Take the quantile
+          </Button>
+        </div>
+      )}
+      {as === "mean" && (
         <div className="px-4 pb-4">
           <Button kind="primary" onPress={() => onUse({ variable: variable.name })}>
             Take the mean

@@ -1,4 +1,5 @@
 import type { VariableView } from "../../../shared/contracts/codebook.ts";
+import { averageWords, correctionWords } from "../../../shared/wording.ts";
 import { BreakdownSlot } from "./BreakdownSlot.tsx";
 import { ComparisonSlot } from "./ComparisonSlot.tsx";
 import type { Draft } from "./draft.ts";
@@ -39,6 +40,7 @@ function ReleaseSlot({ draft, releases, onChange }: Omit<QuestionLineProps, "var
 /** The question as a sentence whose parts can be chosen anew. */
 export function QuestionLine({ draft, releases, variables, isPending, onChange }: QuestionLineProps) {
   const isMean = draft.outcome !== null && "variable" in draft.outcome;
+  const correction = correctionWords(draft, variables);
   const names = (breakdowns: Draft["down"]) => breakdowns.map(({ variable }) => variable);
   return (
     <span
@@ -47,7 +49,7 @@ export function QuestionLine({ draft, releases, variables, isPending, onChange }
       In <ReleaseSlot draft={draft} releases={releases} onChange={onChange} />
       {isMean ? ", among " : ", of every 100 "}
       <PopulationSlot variables={variables} among={draft.among} onChange={(among) => onChange({ among })} />
-      {isMean ? ", what is the mean of " : ", how many have "}
+      {isMean && draft.outcome ? `, what is the ${averageWords(draft.outcome)} of ` : ", how many have "}
       <OutcomeSlot variables={variables} outcome={draft.outcome} onChange={(outcome) => onChange({ outcome })} />? Split by{" "}
       <BreakdownSlot
         side="down"
@@ -68,6 +70,7 @@ export function QuestionLine({ draft, releases, variables, isPending, onChange }
       />{" "}
       across. Compared with{" "}
       <ComparisonSlot draft={draft} variables={variables} onChange={(comparison) => onChange({ comparison })} />.
+      {correction && ` ${correction}`}
     </span>
   );
 }

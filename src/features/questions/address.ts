@@ -7,11 +7,22 @@ import {
   IntervalMethod,
   Level,
   Outcome,
+  OverallKind,
+  Standardisation,
 } from "../../../shared/contracts/questions.ts";
 import { Rule } from "../../../shared/rules.ts";
 import { emptyDraft, tidyDraft, type Draft } from "./draft.ts";
 import { defaultMeasures, MEASURES, type Measure } from "./measures.ts";
-import { escapeText, readBreakdowns, readRule, unescapeText, writeBreakdowns, writeRule } from "./notation.ts";
+import {
+  escapeText,
+  readBreakdowns,
+  readRule,
+  readStandardisation,
+  unescapeText,
+  writeBreakdowns,
+  writeRule,
+  writeStandardisation,
+} from "./notation.ts";
 
 export const VIEWS = ["table", "intervals", "differences"] as const;
 export type View = (typeof VIEWS)[number];
@@ -64,6 +75,10 @@ export function writeAddress({ draft, view, measures }: Ask): string {
     ["interval", draft.interval === emptyDraft.interval ? null : draft.interval],
     ["difference", draft.difference === emptyDraft.difference ? null : draft.difference],
     ["adjusted", draft.adjustment === emptyDraft.adjustment ? null : draft.adjustment],
+    ["quantile", outcome && "variable" in outcome && outcome.quantile !== undefined ? String(outcome.quantile) : null],
+    ["standard", draft.standardise ? writeStandardisation(draft.standardise) : null],
+    ["adjust", draft.adjustFor.length > 0 ? writeBreakdowns(draft.adjustFor) : null],
+    ["overall", draft.overall.length > 0 ? draft.overall.join(",") : null],
     ["view", view === "table" ? null : view],
     ["show", isDefault ? null : measures.join(",")],
   ];
@@ -89,7 +104,14 @@ export function readAddress(search: string): ReadAsk {
   };
   const asIs = (text: string) => text;
   const outcome = take<Outcome | null>("outcome", Outcome, (text) => ({ rule: readRule(text) }), null);
-  const mean = take<Outcome | null>("mean", Outcome, (text) => ({ variable: unescapeText(text) }), null);
+  const quantile = take<number | null>("quantile", z.number().gt(0).lt(1), Number, null);
+  const mean = take<Outcome | null>(
+    "mean",
+    Outcome,
+    (text) => ({ variable: unescapeText(text), ...(quantile === null ? {} : { quantile }) }),
+    null,
+  );
+  const standardise = take<Standardisation | undefined>("standard", Standardisation, readStandardisation, undefined);
   const down = uniqueByVariable(take("down", z.array(Breakdown).max(3), readBreakdowns, []));
   const across = take("across", z.array(Breakdown).max(2), readBreakdowns, []);
   const splits = uniqueByVariable([...down, ...across]);
@@ -105,6 +127,9 @@ export function readAddress(search: string): ReadAsk {
     interval: take("interval", IntervalMethod, asIs, emptyDraft.interval),
     difference: take("difference", DifferenceMethod, asIs, emptyDraft.difference),
     adjustment: take("adjusted", Adjustment, asIs, emptyDraft.adjustment),
+    ...(standardise ? { standardise } : {}),
+    adjustFor: uniqueByVariable(take("adjust", z.array(Breakdown).max(5), readBreakdowns, [])),
+    overall: take("overall", z.array(OverallKind), (text) => [...new Set(text.split(","))], []),
   };
   return {
     draft: tidyDraft(draft),

@@ -13,6 +13,8 @@ export const emptyDraft: Draft = {
   interval: "korn-graubard",
   difference: "linear",
   adjustment: "none",
+  adjustFor: [],
+  overall: [],
 };
 
 /** The question a draft puts once nothing is missing. */

@@ -1,4 +1,4 @@
-import type { Breakdown } from "../../../shared/contracts/questions.ts";
+import type { Breakdown, Standardisation } from "../../../shared/contracts/questions.ts";
 import { Rule } from "../../../shared/rules.ts";
 import { bandLabel } from "./bands.ts";
 
@@ -104,4 +104,20 @@ export function readBreakdowns(text: string): unknown[] {
     const [, name = part, bands] = /^([^(]*)\((.*)\)$/su.exec(part) ?? [];
     return { variable: unescapeText(name), ...(bands === undefined ? {} : { bands: bands.split(";").map(readBand) }) };
   });
+}
+
+/** A standardisation: `age(18..44;45..)@who-2000-2025` by a published standard, `agecat@0.4,0.6` by weights of one's own. */
+export function writeStandardisation({ variable, bands, weights }: Standardisation): string {
+  const by = "standard" in weights ? weights.standard : weights.own.join(",");
+  return `${writeBreakdowns([{ variable, ...(bands ? { bands } : {}) }])}@${by}`;
+}
+
+/** What an address standardises by; null where it can't be read. */
+export function readStandardisation(text: string): unknown {
+  const at = text.lastIndexOf("@");
+  const [breakdown] = readBreakdowns(text.slice(0, at));
+  const by = text.slice(at + 1);
+  if (at < 1 || !breakdown) return null;
+  const own = by.split(",").map(Number);
+  return { ...breakdown, weights: own.some(Number.isNaN) ? { standard: by } : { own } };
 }

@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import type { Band, Breakdown } from "../../../shared/contracts/questions.ts";
+import { OVERALL_KINDS, type Band, type Breakdown } from "../../../shared/contracts/questions.ts";
 import type { Rule } from "../../../shared/rules.ts";
 import { readAddress, VIEWS, writeAddress, type Ask } from "../../../src/features/questions/address.ts";
 import { emptyDraft, tidyDraft } from "../../../src/features/questions/draft.ts";
@@ -44,7 +44,12 @@ const breakdowns = fc.uniqueArray(
 const ask: fc.Arbitrary<Ask> = fc
   .record({
     releaseId: fc.option(fc.uuid()),
-    outcome: fc.oneof(fc.constant(null), fc.record({ rule }), fc.record({ variable: name })),
+    outcome: fc.oneof(
+      fc.constant(null),
+      fc.record({ rule }),
+      fc.record({ variable: name }),
+      fc.record({ variable: name, quantile: fc.constantFrom(0.1, 0.25, 0.5, 0.9) }),
+    ),
     among: fc.option(rule, { nil: undefined }),
     splits: breakdowns,
     cut: fc.nat({ max: 3 }),
@@ -57,13 +62,33 @@ const ask: fc.Arbitrary<Ask> = fc
     interval: fc.constantFrom("korn-graubard" as const, "logit" as const, "wilson" as const, "linear" as const),
     difference: fc.constantFrom("linear" as const, "mover" as const),
     adjustment: fc.constantFrom("none" as const, "holm" as const, "benjamini-hochberg" as const),
+    standardise: fc.option(
+      fc.oneof(
+        fc.record({
+          variable: name,
+          weights: fc.record({ own: fc.array(fc.nat({ max: 1e6 }), { minLength: 2, maxLength: 5 }) }),
+        }),
+        fc.record({
+          variable: name,
+          bands: fc.constant<Band[]>([
+            [18, 44, "18–44"],
+            [45, null, "45 and over"],
+          ]),
+          weights: fc.constant({ standard: "who-2000-2025" }),
+        }),
+      ),
+      { nil: undefined },
+    ),
+    adjustFor: breakdowns,
+    overall: fc.subarray([...OVERALL_KINDS]),
     view: fc.constantFrom(...VIEWS),
     measures: fc.subarray([...MEASURES]),
   })
-  .map(({ splits, cut, among, view, measures, ...rest }) => ({
+  .map(({ splits, cut, among, standardise, view, measures, ...rest }) => ({
     draft: tidyDraft({
       ...rest,
       ...(among ? { among } : {}),
+      ...(standardise ? { standardise } : {}),
       down: splits.slice(0, cut),
       across: splits.slice(cut, cut + 2),
     }),

@@ -194,6 +194,7 @@ export function tableOf(question: Question): Table {
   const cells = breakdowns.length > 0 ? product(codes) : [];
   return {
     question,
+    overall: [],
     release: {
       id: releaseId,
       surveyId,
