@@ -10,6 +10,10 @@ export interface ReadingContext {
   group: string;
   /** What is counted or averaged, such as “Smoking now: Daily”. */
   outcome: string;
+  /** “mean”, “median”; of no use for a share. */
+  average: string;
+  /** What the figure is standardised or adjusted for, as a sentence; null where it is crude. */
+  correction: string | null;
   comparison: Comparison;
   /** Whether p-values were adjusted for many comparisons. */
   isAdjusted: boolean;
@@ -32,18 +36,25 @@ const span = (low: number | null, high: number | null, write: (value: number) =>
 };
 
 /** “Of every 100 people with Sex: Men, about 38 have Smoking now: Daily (34 to 43).” */
-export function estimateSentence(cell: ShownCell, { kind, group, outcome }: ReadingContext): string {
+export function estimateSentence(cell: ShownCell, { kind, group, outcome, average }: ReadingContext): string {
   const { estimate, low, high } = cell;
   if (estimate === null) return `There is no estimate for ${group}.`;
   if (kind === "mean") {
     const decimals = figureDecimals(kind, low, high);
     const write = (value: number) => formatFigure(kind, value, decimals);
-    return `Among ${group}, the mean of ${outcome} is about ${write(estimate)}${span(low, high, write)}.`;
+    return `Among ${group}, the ${average} of ${outcome} is about ${write(estimate)}${span(low, high, write)}.`;
   }
   const base = naturalBase(estimate);
   const write = (value: number) => whole(value, base);
   const count = estimate === 0 ? "none" : estimate === 1 ? "all" : `about ${write(estimate)}`;
   return `Of every ${formatNumber(base)} ${group}, ${count} ${count === "about 1" ? "has" : "have"} ${outcome}${span(low, high, write)}.`;
+}
+
+/** What standardising or adjusting makes of a figure; null where it is crude. */
+export function correctionSentence({ correction }: ReadingContext): string | null {
+  return correction === null
+    ? null
+    : `${correction} It says what the figure would be if groups were alike in that, not what it is.`;
 }
 
 /** A signed difference in words: “17 more”, “7 fewer”, “1.2 lower”, “as many”. */

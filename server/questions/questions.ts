@@ -15,13 +15,11 @@ import { caption } from "./caption.ts";
 import { compileQuestion, type CompiledQuestion } from "./compile.ts";
 import { tableNotes } from "./notes.ts";
 import { tableShape } from "./nodes.ts";
-import { fitsComplements, type Answer, type Work } from "./work.ts";
+import { fitsComplements, type Answer, type Outcome, type Work } from "./work.ts";
 
 /** Names the way of computing in every answer; raised whenever a figure could come out otherwise. */
 export const ENGINE = "Perhundred engine 1";
 const ANSWERS_KEPT = 500;
-/** Failures of the engine that tell the reader something. */
-const HONEST = new Set(["DesignError", "SeparationError", "SingularFitError"]);
 
 /** What a release is to the questions part. */
 export interface AskedRelease {
@@ -101,7 +99,7 @@ function refuseTooLarge(compiled: CompiledQuestion, question: Question): void {
 
 /** @param parts.columns Given by tests; otherwise a cache over the database is made. */
 export function createQuestions(parts: { config: Config; columns: ColumnCache }): Questions {
-  const pool = new Piscina<Work, Answer>({
+  const pool = new Piscina<Work, Outcome>({
     ...workerOptions(new URL("./work.ts", import.meta.url)),
     minThreads: 1,
     maxThreads: parts.config.workers,
@@ -116,12 +114,9 @@ export function createQuestions(parts: { config: Config; columns: ColumnCache })
       variables,
       minimums: design.minimums,
     });
-    try {
-      return await pool.run(prepared);
-    } catch (error) {
-      if (error instanceof Error && HONEST.has(error.name)) throw new AppError("unprocessable", error.message);
-      throw error;
-    }
+    const outcome = await pool.run(prepared);
+    if ("refusal" in outcome) throw new AppError("unprocessable", outcome.refusal);
+    return outcome.answer;
   }
 
   return {

@@ -160,5 +160,18 @@ function overallInput(work: Work, nodes: readonly TableNode[], assignment: Assig
   };
 }
 
+/** Failures that tell the reader something. An error loses its name on the way between threads, so they travel as answers. */
+const HONEST = new Set(["DesignError", "SparseTableError", "SeparationError", "SingularFitError"]);
+
+/** What a worker sends back: the answer, or why there can be none. */
+export type Outcome = { answer: Answer } | { refusal: string };
+
 /** The worker's entry. */
-export default (work: Work): Promise<Answer> => answer(work);
+export default async function run(work: Work): Promise<Outcome> {
+  try {
+    return { answer: await answer(work) };
+  } catch (error) {
+    if (error instanceof Error && HONEST.has(error.name)) return { refusal: error.message };
+    throw error;
+  }
+}

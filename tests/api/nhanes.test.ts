@@ -171,6 +171,46 @@ describe("NHANES 2009–2010 from upload to answers", () => {
     for (const cell of withheld) expect(Object.keys(cell).sort()).toEqual(["key", "reason", "shown"]);
   });
 
+  // Source: R's survey package, age-adjusted to the 2000 US standard population, three groups; published one-decimal values agree.
+  it("standardises for age, with the covariance of both sides", async () => {
+    const table = await ask(epidemiologist, {
+      outcome: HIGH,
+      down: [{ variable: "RIAGENDR" }],
+      comparison: { kind: "group", breakdown: "RIAGENDR", value: "1" },
+      standardise: { variable: "agecat", weights: { own: [0, 77_670, 72_816, 45_364] } },
+    });
+    expect(cellOf(table, "1").estimate).toBeCloseTo(0.121643, 6);
+    expect(cellOf(table, "1").se).toBeCloseTo(0.008688, 6);
+    expect(cellOf(table, "2").estimate).toBeCloseTo(0.143271, 6);
+    expect(cellOf(table, "2").comparison?.se).toBeCloseTo(0.008536, 6);
+    expect(cellOf(table, "2").comparison?.p).toBeCloseTo(0.0221, 4);
+    expect(table.caption).toContain("Standardised for Age.");
+  });
+
+  // Source: R's survey package, Rao–Scott F of race among adults.
+  it("tests the table as a whole", async () => {
+    const table = await ask(epidemiologist, {
+      outcome: HIGH,
+      among: ADULTS,
+      down: [{ variable: "race" }],
+      overall: ["association"],
+    });
+    expect(table.overall[0]?.figures[0]?.estimate).toBeCloseTo(1.56272, 5);
+    expect(table.overall[0]?.df).toBeCloseTo(27.32787, 4);
+    expect(table.overall[0]?.p).toBeCloseTo(0.22836, 5);
+  });
+
+  it("refuses an adjustment that can't be told apart from the groups, and says why", async () => {
+    const answer = await epidemiologist.post("/api/tables", {
+      releaseId,
+      outcome: { rule: { variable: "agecat", in: ["1"] } },
+      down: [{ variable: "race" }],
+      adjustFor: [{ variable: "agecat" }],
+    });
+    expect(answer.status, answer.text).toBe(422);
+    expect(answer.text).not.toContain("fault is ours");
+  });
+
   it("names what doesn't fit the codebook", async () => {
     const answer = await epidemiologist.post("/api/tables", { releaseId, outcome: HIGH, down: [{ variable: "height" }] });
     expect(answer.status).toBe(400);

@@ -7,6 +7,8 @@ const context: ReadingContext = {
   kind: "share",
   group: "people with Sex: Men",
   outcome: "Smoking now: Daily",
+  average: "mean",
+  correction: null,
   comparison: { kind: "all" },
   reference: "everyone",
   isAdjusted: false,

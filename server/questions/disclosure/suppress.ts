@@ -1,6 +1,6 @@
 import type { DisclosureMinimums } from "../../../shared/contracts/design.ts";
 import type { TableLine } from "../nodes.ts";
-import { boundsOfWithheld } from "./audit.ts";
+import { boundsOfWithheld, type KnownParts } from "./audit.ts";
 import { isTooFew, type Counts } from "./counts.ts";
 
 /** Why a figure is withheld; null where it is shown. */
@@ -63,27 +63,48 @@ function nextAround(node: number, table: Table, withheld: readonly Withholding[]
   return candidates[0] ?? null;
 }
 
+/** More figures below the minimums than this can't be audited quickly; such a table shows little anyway. */
+const SPARSE_LIMIT = 300;
+
+/** A table so sparse that what may be shown of it can't be worked out in reasonable time. */
+export class SparseTableError extends Error {
+  override readonly name = "SparseTableError";
+}
+
 /**
  * Decides which figures of a table may be shown: primary suppression by the release's minimums, then secondary until
  * no withheld count can be worked out, from all that is shown, to less than the minimums' width (checked by linear programming).
  * Sources: Handbook on Statistical Disclosure Control (2nd ed.), §5.2–5.5.
+ * @throws {SparseTableError} Nearly everything would be withheld.
  * @param table Counts of every node and the lines along which they add up.
  */
 export async function suppress(table: Table, minimums: DisclosureMinimums): Promise<Withholding[]> {
   const withheld = table.counts.map((counts): Withholding =>
     counts.respondents === 0 ? "empty" : isTooFew(counts, minimums) ? "too-few" : null,
   );
-  if (!withheld.includes("too-few")) return withheld;
+  const tooFew = withheld.filter((reason) => reason === "too-few").length;
+  if (tooFew === 0) return withheld;
+  if (tooFew > SPARSE_LIMIT)
+    throw new SparseTableError(
+      `Of this table's ${withheld.length} figures ${tooFew} have too few respondents to be shown, and many more would have to be withheld with them. Split by less, or use wider bands.`,
+    );
+  const known = systems(table, minimums).map((): KnownParts => new Map());
   for (;;) {
     closeLines(table, minimums, withheld);
     const isWithheld = withheld.map((reason) => reason === "too-few" || reason === "protects-another");
     const exposed = new Set<number>();
-    for (const { counts, enough } of systems(table, minimums)) {
-      const bounds = await boundsOfWithheld({ counts, isWithheld, lines: table.lines }, enough);
+    for (const [i, { counts, enough }] of systems(table, minimums).entries()) {
+      const bounds = await boundsOfWithheld({ counts, isWithheld, lines: table.lines }, enough, known[i]);
       bounds.forEach((range, node) => range && range[1] - range[0] < enough && exposed.add(node));
     }
-    const next = [...exposed].map((node) => nextAround(node, table, withheld)).find((node) => node !== null);
-    if (next === undefined) return withheld;
-    withheld[next] = "protects-another";
+    // One more figure for each exposed one, then all is looked at again.
+    let isMore = false;
+    for (const node of exposed) {
+      const next = nextAround(node, table, withheld);
+      if (next === null) continue;
+      withheld[next] = "protects-another";
+      isMore = true;
+    }
+    if (!isMore) return withheld;
   }
 }

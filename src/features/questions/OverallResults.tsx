@@ -14,7 +14,8 @@ const FORMATS: Record<Figure["unit"], (value: number) => string> = {
 function figureWords({ unit, estimate, low, high }: Figure): string {
   const format = FORMATS[unit];
   if (estimate === null) return "can't be worked out";
-  return low === null || high === null ? format(estimate) : `${format(estimate)} (${format(low)} to ${format(high)})`;
+  const bare = (value: number) => format(value).replace(/ points$/, "");
+  return low === null || high === null ? format(estimate) : `${format(estimate)} (${bare(low)} to ${bare(high)})`;
 }
 
 /** What was worked out of the table as a whole, under it. */

@@ -1,7 +1,7 @@
 import type { Cell, ShownCell, Table } from "../../../shared/contracts/tables.ts";
 import { figureDecimals, formatDifference, formatDifferenceInterval, formatFigure } from "../../../shared/figures.ts";
 import { formatCount, formatP, formatPeople, formatSignificant } from "../../../shared/format.ts";
-import { differenceSentences, estimateSentence, withheldSentences } from "../../../shared/reading.ts";
+import { differenceSentences, correctionSentence, estimateSentence, withheldSentences } from "../../../shared/reading.ts";
 import type { NamedVariable } from "../../../shared/wording.ts";
 import { DotField } from "../../charts/DotField.tsx";
 import { Facts } from "../../components/Facts.tsx";
@@ -83,7 +83,9 @@ function ShownReading({ cell, table, variables }: { cell: ShownCell; table: Tabl
           <DotField estimate={estimate} low={low ?? estimate} high={high ?? estimate} text={sentence} />
         </div>
       )}
-      <p className="mt-4 text-[1.0625rem] leading-relaxed">{[sentence, ...differenceSentences(cell, context)].join(" ")}</p>
+      <p className="mt-4 text-[1.0625rem] leading-relaxed">
+        {[sentence, ...differenceSentences(cell, context), correctionSentence(context)].filter((part) => part !== null).join(" ")}
+      </p>
       <div className="mt-5">
         <Facts facts={facts(cell, table)} />
       </div>

@@ -1,6 +1,7 @@
 import type { Table } from "../../../shared/contracts/tables.ts";
 import { figureDecimals, formatFigure, formatInterval } from "../../../shared/figures.ts";
 import { formatCounted } from "../../../shared/format.ts";
+import { averageWords } from "../../../shared/wording.ts";
 
 const ADJUSTED = {
   none: "not adjusted for",
@@ -8,12 +9,15 @@ const ADJUSTED = {
   "benjamini-hochberg": "after Benjamini–Hochberg over",
 } as const;
 
-function everyoneWords({ whole, measure }: Table): string | null {
+function everyoneWords({ whole, measure, question }: Table): string | null {
   if (!whole.shown || whole.estimate === null) return null;
   const interval = formatInterval(measure, whole.low, whole.high);
   const estimate = formatFigure(measure, whole.estimate, figureDecimals(measure, whole.low, whole.high));
-  return `Everyone: ${estimate}${measure === "share" ? " of every 100" : " on average"}${interval ? ` (${interval})` : ""}, ${formatCounted(whole.respondents, "respondent")}.`;
+  return `Everyone: ${estimate}${measure === "share" ? " of every 100" : "quantile" in question.outcome ? "" : " on average"}${interval ? ` (${interval})` : ""}, ${formatCounted(whole.respondents, "respondent")}.`;
 }
+
+/** “means”, “medians”, “90th percentiles”. */
+const plural = (word: string) => `${word}s`;
 
 /** What the marks of the table mean, and where its figures come from. */
 export function TableFoot({ table }: { table: Table }) {
@@ -22,8 +26,11 @@ export function TableFoot({ table }: { table: Table }) {
   return (
     <div className="measure mt-4 space-y-2 text-[0.8125rem] leading-relaxed text-muted">
       <p>
-        {everyoneWords(table)} {table.measure === "share" ? "Numbers are of every 100 people" : "Numbers are means"}, with{" "}
-        {`${level}\u00a0%`} intervals.
+        {everyoneWords(table)}{" "}
+        {table.measure === "share"
+          ? "Numbers are of every 100 people"
+          : `Numbers are ${plural(averageWords(table.question.outcome))}`}
+        , with {`${level}\u00a0%`} intervals.
         {comparison.kind !== "none" && (
           <>
             {" "}

@@ -1,6 +1,14 @@
 import type { Table } from "../../../shared/contracts/tables.ts";
 import type { ReadingContext } from "../../../shared/reading.ts";
-import { comparisonWords, joinWords, outcomeWords, ruleWords, type NamedVariable } from "../../../shared/wording.ts";
+import {
+  averageWords,
+  comparisonWords,
+  correctionWords,
+  joinWords,
+  outcomeWords,
+  ruleWords,
+  type NamedVariable,
+} from "../../../shared/wording.ts";
 import { groupParts } from "./pivot.ts";
 
 /** Whom a cell is about: what the question asks of people, and what the cell's own row and column add. */
@@ -23,6 +31,8 @@ export function readingContext(
     kind: table.measure,
     group: groupWords(table, key, variables),
     outcome: outcomeWords(outcome, variables),
+    average: averageWords(outcome),
+    correction: correctionWords(table.question, variables),
     comparison,
     isAdjusted: table.question.adjustment !== "none",
     reference: comparisonWords(comparison, variables, [...down, ...across], table.measure === "mean"),
