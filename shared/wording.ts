@@ -13,6 +13,8 @@ export interface WordingContext {
   surveyTitle: string;
   wave: string;
   variables: readonly NamedVariable[];
+  /** Waves of other releases of the survey by id, for comparisons with them. */
+  waves?: ReadonlyMap<string, string>;
 }
 
 type Variables = WordingContext["variables"];
@@ -97,10 +99,12 @@ export function comparisonWords(
   variables: Variables,
   breakdowns: readonly Breakdown[],
   isMean: boolean,
+  waves: ReadonlyMap<string, string> = new Map(),
 ): string | null {
   if (comparison.kind === "none") return null;
   if (comparison.kind === "rest") return "the rest";
   if (comparison.kind === "all") return "everyone";
+  if (comparison.kind === "release") return `the same in ${waves.get(comparison.releaseId) ?? "another wave"}`;
   if (comparison.kind === "target")
     return isMean ? `the value ${comparison.value}` : `${Number((100 * comparison.value).toPrecision(10))} of every 100`;
   const bands = breakdowns.find(({ variable }) => variable === comparison.breakdown)?.bands;
@@ -111,7 +115,7 @@ export function comparisonWords(
 }
 
 /** A question as the sentences of the question line, as they stand in titles, captions, exports and the ledger. */
-export function questionSentence(question: Question, { surveyTitle, wave, variables }: WordingContext): string {
+export function questionSentence(question: Question, { surveyTitle, wave, variables, waves }: WordingContext): string {
   const isMean = "variable" in question.outcome;
   const population = populationWords(question.among, variables);
   const outcome = outcomeWords(question.outcome, variables);
@@ -122,7 +126,7 @@ export function questionSentence(question: Question, { surveyTitle, wave, variab
   const across = breakdownWords(question.across, variables);
   const sides = [down && `${down} down`, across && `${across} across`].filter((side) => side !== "");
   const split = sides.length > 0 ? ` Split by ${sides.join(" and ")}.` : "";
-  const reference = comparisonWords(question.comparison, variables, [...question.down, ...question.across], isMean);
+  const reference = comparisonWords(question.comparison, variables, [...question.down, ...question.across], isMean, waves);
   const corrected = correctionWords(question, variables);
   return [`${asked}${split}`, reference && `Compared with ${reference}.`, corrected].filter((part) => part !== null).join(" ");
 }

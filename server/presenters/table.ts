@@ -10,6 +10,7 @@ import { reliabilityOfMean, reliabilityOfShare } from "../statistics/reliability
 export interface TableFrame {
   question: Question;
   release: Table["release"];
+  compared: Table["compared"];
   engine: string;
   measure: Table["measure"];
   breakdowns: CompiledBreakdown[];
@@ -103,6 +104,7 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
   return {
     question,
     release: { ...frame.release, designDf: answer.designDf },
+    compared: frame.compared,
     engine: frame.engine,
     measure,
     breakdowns: frame.breakdowns,

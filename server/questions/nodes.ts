@@ -84,10 +84,10 @@ function firstOpen(key: readonly (number | null)[], from: number, to: number): n
 }
 
 /**
- * What each node is set against: another node, everyone in the table's groups, the others of them, a fixed value, or nothing.
+ * What each node is set against: another node, everyone in the table's groups, the others of them, itself in another wave, a fixed value, or nothing.
  * Respondents without a value of a breakdown are in none of the groups.
  */
-export type Against = { node: number } | "rest" | "all" | { fixedValue: number } | null;
+export type Against = { node: number } | "rest" | "all" | "other" | { fixedValue: number } | null;
 
 /**
  * The comparison of every node, in node order.
@@ -98,6 +98,7 @@ export function comparisonsOf(shape: TableShape, comparison: Comparison, groupAx
   return shape.nodes.map((node): Against => {
     if (comparison.kind === "none") return null;
     if (comparison.kind === "target") return { fixedValue: comparison.value };
+    if (comparison.kind === "release") return "other";
     if (node.kind === "whole") return null;
     if (comparison.kind === "rest") return "rest";
     if (comparison.kind === "all") return "all";

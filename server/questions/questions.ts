@@ -26,6 +26,8 @@ export interface AskedRelease {
   release: Release;
   design: Design;
   variables: readonly CodebookVariable[];
+  /** Another release of the same survey that groups are compared with. */
+  other?: Omit<AskedRelease, "other">;
 }
 
 /** Where a release's columns and sample come from. */
@@ -51,24 +53,36 @@ function scoresOf({ breakdowns }: CompiledQuestion): number[] {
   return scores.some(Number.isNaN) ? scores.map((_, i) => i + 1) : scores;
 }
 
-/** Gathers what a worker needs; also the way in for checks that run the work in their own thread. */
-export async function prepareWork(
-  compiled: CompiledQuestion,
-  question: Question,
-  source: {
-    releaseId: string;
-    columns: ColumnSource;
-    variables: readonly CodebookVariable[];
-    minimums: Design["minimums"] | null;
-  },
-): Promise<Work> {
+interface WorkSource {
+  releaseId: string;
+  columns: ColumnSource;
+  variables: readonly CodebookVariable[];
+  minimums: Design["minimums"] | null;
+}
+
+async function loadColumns(compiled: CompiledQuestion, source: WorkSource): Promise<Pick<Work, "columns" | "sample">> {
   const idOf = new Map(source.variables.map((variable) => [variable.name, variable.id]));
   const loaded = await Promise.all(
     compiled.plan.columns.map(
       async (name) => [name, (await source.columns.column(source.releaseId, idOf.get(name)!)).values] as const,
     ),
   );
-  const sample = await source.columns.sample(source.releaseId);
+  return { columns: Object.fromEntries(loaded), sample: await source.columns.sample(source.releaseId) };
+}
+
+/** The question over another release. @throws {AppError} `invalid` where its codebook doesn't have the same groups. */
+function compileOther(compiled: CompiledQuestion, question: Question, other: Omit<AskedRelease, "other">): CompiledQuestion {
+  const same = compileQuestion({ ...question, comparison: { kind: "none" } }, other.variables);
+  const codes = ({ breakdowns }: CompiledQuestion) =>
+    breakdowns.map(({ values }) => values.map(({ code }) => code).join()).join(";");
+  if (codes(same) === codes(compiled) && same.plan.outcome.measure === compiled.plan.outcome.measure) return same;
+  const message = `The groups of this table have other codes in ${other.release.wave}, so the two can't be set against each other. Choose another split or another release.`;
+  throw new AppError("invalid", message, { comparison: message });
+}
+
+/** Gathers what a worker needs; also the way in for checks that run the work in their own thread. */
+export async function prepareWork(compiled: CompiledQuestion, question: Question, source: WorkSource): Promise<Work> {
+  const { columns, sample } = await loadColumns(compiled, source);
   const { comparison } = question;
   const groupAxis = comparison.kind === "group" ? compiled.breakdowns.findIndex(({ name }) => name === comparison.breakdown) : -1;
   const groupValue =
@@ -77,13 +91,14 @@ export async function prepareWork(
     plan: compiled.plan,
     down: numberOfValues(compiled, "down"),
     across: numberOfValues(compiled, "across"),
-    columns: Object.fromEntries(loaded),
+    columns,
     sample,
     options: { level: question.level, interval: question.interval, difference: question.difference, comparison },
     groupAxis,
     groupValue,
     overall: question.overall,
     scores: scoresOf(compiled),
+    other: null,
     minimums: source.minimums,
   };
 }
@@ -114,6 +129,17 @@ export function createQuestions(parts: { config: Config; columns: ColumnCache })
       variables,
       minimums: design.minimums,
     });
+    if (asked.other) {
+      const { release: otherRelease, design: otherDesign, variables: otherVariables } = asked.other;
+      const same = compileOther(compiled, question, asked.other);
+      const source = {
+        releaseId: otherRelease.id,
+        columns: parts.columns,
+        variables: otherVariables,
+        minimums: otherDesign.minimums,
+      };
+      prepared.other = { plan: same.plan, minimums: otherDesign.minimums, ...(await loadColumns(same, source)) };
+    }
     const outcome = await pool.run(prepared);
     if ("refusal" in outcome) throw new AppError("unprocessable", outcome.refusal);
     return outcome.answer;
@@ -124,7 +150,7 @@ export function createQuestions(parts: { config: Config; columns: ColumnCache })
       const { release, design, variables } = asked;
       const compiled = compileQuestion(question, variables);
       refuseTooLarge(compiled, question);
-      const key = `${release.id} ${release.checksum} ${release.version} ${JSON.stringify(question)}`;
+      const key = `${release.id} ${release.checksum} ${release.version} ${asked.other?.release.checksum ?? ""} ${JSON.stringify(question)}`;
       const answer = await answers.get(key, () => work(asked, compiled, question));
       const measure = compiled.plan.outcome.measure;
       return presentTable(
@@ -138,10 +164,11 @@ export function createQuestions(parts: { config: Config; columns: ColumnCache })
             checksum: release.checksum,
             designDf: answer.designDf,
           },
+          compared: asked.other ? { id: asked.other.release.id, wave: asked.other.release.wave } : null,
           engine: ENGINE,
           measure,
           breakdowns: compiled.breakdowns,
-          caption: caption(question, release, variables),
+          caption: caption(question, release, variables, asked.other?.release),
           notes: (familySize) => tableNotes(question, design, measure, familySize),
           hidesUnreliable: !reader.roles.includes("epidemiologist") && !reader.roles.includes("steward"),
         },

@@ -1,7 +1,13 @@
 import type { DisclosureMinimums } from "../../shared/contracts/design.ts";
 import type { Question } from "../../shared/contracts/questions.ts";
 import type { OverallResult } from "../../shared/contracts/tables.ts";
-import type { ContrastEstimate, ContrastRequest, Target, TargetEstimate } from "../statistics/estimate.ts";
+import {
+  estimateTargets,
+  type ContrastEstimate,
+  type ContrastRequest,
+  type Target,
+  type TargetEstimate,
+} from "../statistics/estimate.ts";
 import type { Assignment, Sample } from "../statistics/types.ts";
 import { assign, codesOf, type Columns } from "./assign.ts";
 import { isTooFew, type Counts } from "./disclosure/counts.ts";
@@ -10,6 +16,7 @@ import { figuresOf } from "./figures.ts";
 import { overallOf, type OverallInput } from "./overall.ts";
 import { comparisonsOf, tableShape, type TableNode } from "./nodes.ts";
 import type { Plan } from "./plan.ts";
+import { besideEachOther, type OtherWave } from "./waves.ts";
 
 /** What a worker needs to answer a question; all of it can be posted, columns and sample over shared memory. */
 export interface Work {
@@ -26,6 +33,8 @@ export interface Work {
   /** What is asked of the table as a whole, and the score of each of its groups, for a single breakdown. */
   overall: Question["overall"];
   scores: number[];
+  /** Another release to compare with. */
+  other: OtherWave | null;
   /** Null: nothing is withheld (checks against reference results only). */
   minimums: DisclosureMinimums | null;
 }
@@ -73,6 +82,7 @@ export async function answer(work: Work): Promise<Answer> {
   const requests: ContrastRequest[] = [];
   const requestOf = new Map<number, number>();
   const grouped = groupedCells(shape.nodes);
+  const tableCells = work.plan.axes.reduce((product, axis) => product * (axis.values + 1), 1);
   let everyone: number | null = null;
   const against = comparisonsOf(shape, work.options.comparison, work.groupAxis, work.groupValue);
   against.forEach((reference, node) => {
@@ -81,6 +91,9 @@ export async function answer(work: Work): Promise<Answer> {
     if (reference === "rest") {
       requests.push({ of: node, from: targets.length });
       targets.push({ cells: complement(shape.nodes[node]!.cells, grouped) });
+    } else if (reference === "other") {
+      requests.push({ of: node, from: targets.length });
+      targets.push({ cells: shape.nodes[node]!.cells.map((cell) => cell + tableCells) });
     } else if (reference === "all") {
       if (everyone === null) {
         everyone = targets.length;
@@ -95,9 +108,9 @@ export async function answer(work: Work): Promise<Answer> {
   const { level, interval, difference } = work.options;
   const rows = work.sample.weight.length;
   const covariates = work.plan.covariates.map((axis) => ({ codes: codesOf(axis, work.columns, rows), levels: axis.values }));
+  const both = work.other ? besideEachOther(work.sample, assignment, work.other) : { sample: work.sample, assignment };
   const result = figuresOf({
-    sample: work.sample,
-    assignment,
+    ...both,
     targets,
     contrasts: requests,
     options: { level, interval, difference, isBinary },
@@ -116,10 +129,15 @@ export async function answer(work: Work): Promise<Answer> {
     work.minimums === null
       ? counts.map(({ respondents }) => (respondents === 0 ? "empty" : null))
       : await suppress({ counts, lines: shape.lines }, work.minimums);
+  const ofOther = work.other ? result.targets.slice(shape.nodes.length).map(countsOf) : [];
+  const withheldInOther = work.other?.minimums
+    ? await suppress({ counts: ofOther, lines: shape.lines }, work.other.minimums)
+    : null;
   /** Whether what a figure is set against may not be shown: a withheld cell, or others too few by themselves. */
   const isHidden = (from: ContrastRequest["from"]) => {
     if (typeof from !== "number" || work.minimums === null) return false;
     if (from < shape.nodes.length) return withheld[from] !== null;
+    if (withheldInOther) return withheldInOther[from - shape.nodes.length] !== null;
     return isTooFew(countsOf(result.targets[from]!), work.minimums);
   };
   const nodes = shape.nodes.map(({ key, kind }, node): AnsweredNode => {
@@ -129,7 +147,10 @@ export async function answer(work: Work): Promise<Answer> {
   });
   const isAnyHidden = nodes.some(({ withheld: reason }) => reason === "too-few" || reason === "protects-another");
   const overall = isAnyHidden || work.overall.length === 0 ? [] : overallOf(overallInput(work, shape.nodes, assignment));
-  return { designDf: result.designDf, nodes, overall };
+  const designDf = work.other
+    ? estimateTargets(work.sample, assignment, [], [], { level, interval, difference, isBinary }).designDf
+    : result.designDf;
+  return { designDf, nodes, overall };
 }
 
 /** Figures that together split everyone into groups: those with values on the same axes. */

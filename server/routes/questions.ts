@@ -18,9 +18,9 @@ const DownloadInput = z.strictObject({ question: Question, format: z.enum(["csv"
 export function questionRoutes({ questions, sequelize }: Services): Router {
   const router = Router();
 
-  const load = async (request: Parameters<typeof currentReader>[0], question: Question) => {
+  const load = async (request: Parameters<typeof currentReader>[0], releaseId: string) => {
     const reader = currentReader(request);
-    const { release, access } = await loadRelease(reader, question.releaseId);
+    const { release, access } = await loadRelease(reader, releaseId);
     if (releasePolicy.read(reader, access) && release.status !== "published") {
       const why = release.status === "draft" ? "isn't published yet" : `was ${release.status}`;
       throw new AppError("conflict", `This release ${why}, so it takes no questions. Choose a published release.`);
@@ -30,9 +30,22 @@ export function questionRoutes({ questions, sequelize }: Services): Router {
     return { reader, release, design: release.design, variables: await loadCodebook(release) };
   };
 
+  /** The release asked of, and the one compared with; both must be open to the reader, and of one survey. */
+  const loadBoth = async (request: Parameters<typeof currentReader>[0], question: Question) => {
+    const { reader, ...asked } = await load(request, question.releaseId);
+    const { comparison } = question;
+    if (comparison.kind !== "release") return { reader, ...asked };
+    const { release, design, variables } = await load(request, comparison.releaseId);
+    if (release.surveyId !== asked.release.surveyId) {
+      const message = "Only releases of one survey can be compared.";
+      throw new AppError("invalid", message, { comparison: message });
+    }
+    return { reader, ...asked, other: { release, design, variables } };
+  };
+
   router.post("/tables", requirePerson, async (request, response) => {
     const question = parse(Question, request.body);
-    const { reader, ...asked } = await load(request, question);
+    const { reader, ...asked } = await loadBoth(request, question);
     const table = await questions.table(asked, question, reader);
     await sequelize.transaction((transaction) =>
       record(transaction, reader, {
@@ -47,13 +60,13 @@ export function questionRoutes({ questions, sequelize }: Services): Router {
 
   router.post("/tables/downloads", requirePerson, async (request, response) => {
     const { question, format } = parse(DownloadInput, request.body);
-    const { reader, release, variables } = await load(request, question);
+    const { reader, release, variables, ...rest } = await loadBoth(request, question);
     await sequelize.transaction((transaction) =>
       record(transaction, reader, {
         action: "table.downloaded",
         surveyId: release.surveyId,
         subjectId: release.id,
-        summary: `Took away as ${format}: ${caption(question, release, variables)}`,
+        summary: `Took away as ${format}: ${caption(question, release, variables, "other" in rest ? rest.other.release : undefined)}`,
       }),
     );
     response.status(204).end();

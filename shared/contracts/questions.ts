@@ -26,6 +26,8 @@ export const Comparison = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("all") }),
   z.strictObject({ kind: z.literal("group"), breakdown: VariableName, value: Code }),
   z.strictObject({ kind: z.literal("target"), value: z.number() }),
+  /** The same group in another release of the same survey, drawn independently. */
+  z.strictObject({ kind: z.literal("release"), releaseId: z.uuid() }),
 ]);
 export type Comparison = z.infer<typeof Comparison>;
 
@@ -78,6 +80,8 @@ export const Question = z
     }
     const issue = (path: string[], message: string) => context.addIssue({ code: "custom", path, message });
     const { standardise, adjustFor, comparison, outcome } = question;
+    if (comparison.kind === "release" && comparison.releaseId === question.releaseId)
+      issue(["comparison", "releaseId"], "Compare with another release than the one asked of.");
     if (standardise && names.includes(standardise.variable))
       issue(["standardise", "variable"], "A table can't be split by what it is standardised for.");
     if (adjustFor.some(({ variable }) => names.includes(variable)))
@@ -85,7 +89,7 @@ export const Question = z
     if (new Set(adjustFor.map(({ variable }) => variable)).size < adjustFor.length)
       issue(["adjustFor"], "Adjust for each variable once.");
     if (standardise && adjustFor.length > 0) issue(["adjustFor"], "Standardise or adjust, not both at once.");
-    if (adjustFor.length > 0 && (comparison.kind === "rest" || comparison.kind === "all"))
+    if (adjustFor.length > 0 && ["rest", "all", "release"].includes(comparison.kind))
       issue(["comparison"], "Adjusted figures are compared with a reference group or a fixed value.");
     if (
       "variable" in outcome &&

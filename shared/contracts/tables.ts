@@ -99,6 +99,8 @@ export const Table = z.strictObject({
     checksum: z.string(),
     designDf: z.number(),
   }),
+  /** The release that groups are compared with, where they are compared with one. */
+  compared: z.strictObject({ id: z.uuid(), wave: z.string() }).nullable(),
   engine: z.string(),
   /** Whether estimates are fractions of people or a mean in the variable's units. */
   measure: z.enum(["share", "mean"]),

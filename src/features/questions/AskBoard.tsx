@@ -12,7 +12,7 @@ import { codebookQuery, tableQuery } from "./queries.ts";
 import { QuestionLine } from "./QuestionLine.tsx";
 import { Refusal } from "./Refusal.tsx";
 import { Reading } from "./Reading.tsx";
-import type { AskableRelease } from "./releases.ts";
+import { otherWaves, type AskableRelease } from "./releases.ts";
 import { useAsk } from "./useAsk.ts";
 import { askable } from "./variables.ts";
 
@@ -46,6 +46,7 @@ export function AskBoard({ releases }: { releases: readonly AskableRelease[] }) 
               surveyTitle: release.surveyTitle,
               wave: release.wave,
               variables: known,
+              waves: otherWaves(releases, draft.releaseId),
             })
           : "Ask"
       }

@@ -18,6 +18,11 @@ const KINDS = [
     label: "The rest",
     detail: "Each group against all who aren't in it. The clearest for “does this group stand out?”",
   },
+  {
+    value: "release",
+    label: "Another wave",
+    detail: "Each group against itself in another release of this survey: has it changed?",
+  },
   { value: "group", label: "One group", detail: "Every group against a group that you name, such as the youngest." },
   { value: "target", label: "A fixed value", detail: "Such as a target that has been set. It has no uncertainty of its own." },
 ] as const satisfies readonly { value: Comparison["kind"]; label: string; detail: string }[];
@@ -42,10 +47,12 @@ function groupChoices(draft: Draft, variables: readonly VariableView[]): (Choice
 interface ComparisonProps {
   draft: Draft;
   variables: readonly VariableView[];
+  /** Other releases of the same survey, by id. */
+  waves: ReadonlyMap<string, string>;
   onChange: (comparison: Comparison) => void;
 }
 
-function ComparisonChooser({ draft, variables, onChange, onDone }: ComparisonProps & { onDone: () => void }) {
+function ComparisonChooser({ draft, variables, waves, onChange, onDone }: ComparisonProps & { onDone: () => void }) {
   const { comparison, outcome } = draft;
   const isMean = outcome !== null && "variable" in outcome;
   const [kind, setKind] = useState<Comparison["kind"]>(comparison.kind);
@@ -55,6 +62,7 @@ function ComparisonChooser({ draft, variables, onChange, onDone }: ComparisonPro
   const [groupId, setGroupId] = useState(
     comparison.kind === "group" ? JSON.stringify([comparison.breakdown, comparison.value]) : null,
   );
+  const [waveId, setWaveId] = useState(comparison.kind === "release" ? comparison.releaseId : null);
   const [problem, setProblem] = useState<string>();
   const group = groups.find(({ id }) => id === groupId);
   const readTarget = (): number | string => {
@@ -77,6 +85,12 @@ function ComparisonChooser({ draft, variables, onChange, onDone }: ComparisonPro
         return;
       }
       onChange({ kind, value });
+    } else if (kind === "release") {
+      if (waveId === null) {
+        setProblem("Choose the wave to compare with.");
+        return;
+      }
+      onChange({ kind, releaseId: waveId });
     } else onChange({ kind });
     onDone();
   };
@@ -94,6 +108,18 @@ function ComparisonChooser({ draft, variables, onChange, onDone }: ComparisonPro
           <p className="text-sm text-muted">Split the table first; then one of its groups can be chosen.</p>
         ) : (
           <Chooser label="Reference group" choices={groups} value={groupId} onChange={setGroupId} error={problem} />
+        ))}
+      {kind === "release" &&
+        (waves.size === 0 ? (
+          <p className="text-sm text-muted">No other release of this survey is open to you.</p>
+        ) : (
+          <Chooser
+            label="Wave"
+            choices={[...waves].map(([id, label]) => ({ id, label }))}
+            value={waveId}
+            onChange={setWaveId}
+            error={problem}
+          />
         ))}
       {kind === "target" && (
         <TextField
@@ -114,9 +140,9 @@ function ComparisonChooser({ draft, variables, onChange, onDone }: ComparisonPro
 
 /** What each group is set against. */
 export function ComparisonSlot(props: ComparisonProps) {
-  const { draft, variables } = props;
+  const { draft, variables, waves } = props;
   const isMean = draft.outcome !== null && "variable" in draft.outcome;
-  const words = comparisonWords(draft.comparison, variables, [...draft.down, ...draft.across], isMean);
+  const words = comparisonWords(draft.comparison, variables, [...draft.down, ...draft.across], isMean, waves);
   return (
     <Slot title="Compared with what?" value={words ?? "nothing"} isEmpty={words === null}>
       {(close) => <ComparisonChooser {...props} onDone={close} />}

@@ -129,8 +129,8 @@ function CorrectionChooser({ draft, variables, onChange, start, onDone }: Correc
           taken={taken}
           most={5}
           onChange={(adjustFor) => {
-            const isComparable = draft.comparison.kind === "rest" || draft.comparison.kind === "all";
-            onChange({ adjustFor, standardise: undefined, ...(isComparable ? { comparison: { kind: "none" } } : {}) });
+            const isIncomparable = ["rest", "all", "release"].includes(draft.comparison.kind);
+            onChange({ adjustFor, standardise: undefined, ...(isIncomparable ? { comparison: { kind: "none" } } : {}) });
           }}
           onDone={onDone}
         />

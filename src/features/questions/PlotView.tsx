@@ -8,6 +8,7 @@ import type { CellId } from "./pivot.ts";
 import { differenceRows, figureTable, intervalRows } from "./plots.ts";
 import { recordDownload } from "./queries.ts";
 import { tableCsv } from "./tableCsv.ts";
+import { comparedWaves } from "./readingContext.ts";
 
 export interface PlotViewProps {
   table: Table;
@@ -18,10 +19,14 @@ export interface PlotViewProps {
 }
 
 /** What a plot is about: the outcome, of whom, by what, against what. */
-function plotTitle({ question, measure }: Table, view: PlotViewProps["view"], variables: readonly NamedVariable[]): string {
+function plotTitle(
+  { question, measure, compared }: Table,
+  view: PlotViewProps["view"],
+  variables: readonly NamedVariable[],
+): string {
   const splits = [...question.down, ...question.across];
   const by = breakdownWords(splits, variables);
-  const reference = comparisonWords(question.comparison, variables, splits, measure === "mean");
+  const reference = comparisonWords(question.comparison, variables, splits, measure === "mean", comparedWaves({ compared }));
   const outcome = outcomeWords(question.outcome, variables);
   const subject = view === "differences" ? `Difference from ${reference ?? "the comparison"} in ${outcome}` : outcome;
   const unit = measure === "share" ? (view === "differences" ? "percentage points" : "of every 100 people") : "mean";

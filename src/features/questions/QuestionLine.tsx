@@ -5,7 +5,7 @@ import { ComparisonSlot } from "./ComparisonSlot.tsx";
 import type { Draft } from "./draft.ts";
 import { OutcomeSlot } from "./OutcomeSlot.tsx";
 import { PopulationSlot } from "./PopulationSlot.tsx";
-import { releaseChoice, releaseName, type AskableRelease } from "./releases.ts";
+import { otherWaves, releaseChoice, releaseName, type AskableRelease } from "./releases.ts";
 import { SearchList } from "./SearchList.tsx";
 import { Slot } from "./Slot.tsx";
 
@@ -69,8 +69,13 @@ export function QuestionLine({ draft, releases, variables, isPending, onChange }
         onChange={(across) => onChange({ across })}
       />{" "}
       across. Compared with{" "}
-      <ComparisonSlot draft={draft} variables={variables} onChange={(comparison) => onChange({ comparison })} />.
-      {correction && ` ${correction}`}
+      <ComparisonSlot
+        draft={draft}
+        variables={variables}
+        waves={otherWaves(releases, draft.releaseId)}
+        onChange={(comparison) => onChange({ comparison })}
+      />
+      .{correction && ` ${correction}`}
     </span>
   );
 }

@@ -41,10 +41,12 @@ export interface ReadAsk extends Ask {
 
 function writeComparison(comparison: Comparison): string {
   if (comparison.kind === "group") return `${escapeText(comparison.breakdown)}:${escapeText(comparison.value)}`;
+  if (comparison.kind === "release") return `@${comparison.releaseId}`;
   return comparison.kind === "target" ? String(comparison.value) : comparison.kind;
 }
 
 function readComparison(text: string): unknown {
+  if (text.startsWith("@")) return { kind: "release", releaseId: text.slice(1) };
   const [breakdown = "", value, ...more] = text.split(":");
   if (value !== undefined && more.length === 0)
     return { kind: "group", breakdown: unescapeText(breakdown), value: unescapeText(value) };

@@ -23,9 +23,11 @@ export function questionOf(draft: Draft): Question | null {
   return success ? data : null;
 }
 
-/** The same draft where a comparison with a group that no longer splits the table is let go. */
+/** The same draft where a comparison with what is no longer there is let go: a group of a split, or the release asked of itself. */
 export function tidyDraft(draft: Draft): Draft {
   const { comparison } = draft;
+  if (comparison.kind === "release" && comparison.releaseId === draft.releaseId)
+    return { ...draft, comparison: { kind: "none" } };
   if (comparison.kind !== "group") return draft;
   const breakdown = [...draft.down, ...draft.across].find(({ variable }) => variable === comparison.breakdown);
   const isThere = breakdown !== undefined && (!breakdown.bands || Number(comparison.value) <= breakdown.bands.length);

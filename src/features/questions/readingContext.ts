@@ -20,6 +20,10 @@ function groupWords(table: Table, key: readonly (string | null)[], variables: re
   return all.length > 0 ? `people with ${joinWords(all, "and")}` : "people";
 }
 
+/** The wave that groups are compared with, for the words of the comparison. */
+export const comparedWaves = ({ compared }: Pick<Table, "compared">): ReadonlyMap<string, string> =>
+  new Map(compared ? [[compared.id, compared.wave]] : []);
+
 /** What the sentences about a cell need to know. */
 export function readingContext(
   table: Table,
@@ -35,6 +39,6 @@ export function readingContext(
     correction: correctionWords(table.question, variables),
     comparison,
     isAdjusted: table.question.adjustment !== "none",
-    reference: comparisonWords(comparison, variables, [...down, ...across], table.measure === "mean"),
+    reference: comparisonWords(comparison, variables, [...down, ...across], table.measure === "mean", comparedWaves(table)),
   };
 }

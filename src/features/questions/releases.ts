@@ -28,3 +28,10 @@ export const releaseChoice = (release: AskableRelease): Choice => ({
     .filter((part) => part !== null)
     .join(" · "),
 });
+
+/** Waves of the other releases of a release's survey, by id. */
+export function otherWaves(releases: readonly AskableRelease[], releaseId: string | null): ReadonlyMap<string, string> {
+  const surveyId = releases.find(({ id }) => id === releaseId)?.surveyId;
+  const others = releases.filter((release) => release.surveyId === surveyId && release.id !== releaseId);
+  return new Map(others.map(({ id, wave }) => [id, wave]));
+}

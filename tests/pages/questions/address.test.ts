@@ -56,6 +56,7 @@ const ask: fc.Arbitrary<Ask> = fc
     comparison: fc.oneof(
       fc.constantFrom({ kind: "none" as const }, { kind: "rest" as const }, { kind: "all" as const }),
       number.map((value) => ({ kind: "target" as const, value })),
+      fc.uuid().map((releaseId) => ({ kind: "release" as const, releaseId })),
       fc.record({ kind: fc.constant("group" as const), breakdown: name, value: code }),
     ),
     level: fc.constantFrom(90 as const, 95 as const, 99 as const),

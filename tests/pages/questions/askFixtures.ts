@@ -195,6 +195,7 @@ export function tableOf(question: Question): Table {
   return {
     question,
     overall: [],
+    compared: null,
     release: {
       id: releaseId,
       surveyId,
