@@ -51,7 +51,7 @@ export function DataTable<Row extends RowData>({
                       <button
                         type="button"
                         onClick={header.column.getToggleSortingHandler()}
-                        className={`group inline-flex min-h-6 items-center gap-1 font-semibold hover:text-action ${alignRight.includes(header.column.id) ? "flex-row-reverse" : ""}`}
+                        className={`group inline-flex min-h-6 items-center gap-1 text-left font-semibold hover:text-action ${alignRight.includes(header.column.id) ? "flex-row-reverse" : ""}`}
                       >
                         <table.FlexRender header={header} />
                         <Arrow

@@ -10,7 +10,7 @@ export function Facts({ facts }: { facts: readonly { label: string; value: React
           className="grid grid-cols-[minmax(7rem,1fr)_minmax(0,auto)] items-baseline gap-x-6 gap-y-0.5 border-b border-line py-2 text-[0.9375rem]"
         >
           <dt className="text-muted">{label}</dt>
-          <dd className="text-right tabular-nums">{value}</dd>
+          <dd className="min-w-0 text-right wrap-anywhere tabular-nums">{value}</dd>
           {note !== undefined && <dd className="col-span-2 text-sm text-muted">{note}</dd>}
         </div>
       ))}

@@ -41,8 +41,8 @@ export function AccessPage() {
       header: "Person",
       cell: ({ row }) => (
         <>
-          <span className="font-medium">{row.original.person.name}</span>
-          <span className="block break-all text-muted">{row.original.person.email}</span>
+          <span className="block min-w-52 font-medium">{row.original.person.name}</span>
+          <span className="block wrap-anywhere text-muted">{row.original.person.email}</span>
         </>
       ),
     }),

@@ -34,8 +34,8 @@ export function PeoplePage() {
       header: "Name",
       cell: ({ row }) => (
         <>
-          <span className="font-medium">{row.original.name}</span>
-          <span className="block break-all text-muted">{row.original.email}</span>
+          <span className="block min-w-52 font-medium">{row.original.name}</span>
+          <span className="block wrap-anywhere text-muted">{row.original.email}</span>
         </>
       ),
     }),

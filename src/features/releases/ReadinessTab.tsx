@@ -32,7 +32,7 @@ export function ReadinessTab() {
   const view = readiness.data;
   return (
     <>
-      <Findings view={view} releaseId={release.id} />
+      <Findings view={view} releaseId={release.id} isDraft={release.status === "draft"} />
       {release.status === "draft" && <Publication view={view} wave={release.wave} survey={release.surveyTitle} />}
       <div className="mt-12 grid gap-x-16 gap-y-12 lg:grid-cols-2">
         <div>
@@ -85,12 +85,14 @@ export function ReadinessTab() {
   );
 }
 
-function Findings({ view, releaseId }: { view: ReadinessView; releaseId: string }) {
+function Findings({ view, releaseId, isDraft }: { view: ReadinessView; releaseId: string; isDraft: boolean }) {
   const faults = view.findings.filter(({ severity }) => severity === "fault");
   const remarks = view.findings.filter(({ severity }) => severity === "remark");
   return (
     <div className="measure space-y-4" aria-label="What the checks found" role="region">
-      {faults.length === 0 && <Notice kind="done">Nothing stands in the way of publication.</Notice>}
+      {faults.length === 0 && (
+        <Notice kind="done">{isDraft ? "Nothing stands in the way of publication." : "The checks found no fault."}</Notice>
+      )}
       {faults.map(({ kind, message, remedy }) => (
         <Notice key={kind} kind="wrong" title={message}>
           {remedy}{" "}
