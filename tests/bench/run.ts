@@ -21,7 +21,9 @@ import { prepareWork } from "../../server/questions/questions.ts";
 import { answer } from "../../server/questions/work.ts";
 import { loadCodebook } from "../../server/services/codebook.ts";
 import { publish } from "../../server/services/publication.ts";
+import { createRandom } from "../../seeds/random.ts";
 import { estimateTargets } from "../../server/statistics/estimate.ts";
+import type { Sample } from "../../server/statistics/types.ts";
 import { measureGroupBy } from "./groupBy.ts";
 import { measure, type Measurement } from "./measure.ts";
 import { BENCH_CODEBOOK, RESPONDENTS, writeBenchFile } from "./survey.ts";
@@ -131,6 +133,27 @@ async function measureEngine(release: Release, tell: (line: string) => void): Pr
     return { cells: [(a * slots[1] + b) * slots[2] + c] };
   });
   const options = { level: 95, interval: "korn-graubard", difference: "linear", isBinary: true } as const;
+  const workOf = async (more: Partial<QuestionInput>) => {
+    const other = Question.parse({ ...question(release.id), ...more });
+    const source = {
+      releaseId: release.id,
+      columns: new ColumnCache(new DatabaseStore(), CACHE_BYTES),
+      variables,
+      minimums: null,
+    };
+    return prepareWork(compileQuestion(other, variables), other, source);
+  };
+  const standardised = await workOf({
+    down: [{ variable: "a" }],
+    standardise: { variable: "b", weights: { own: [3, 2, 2, 1, 1, 1] } },
+  });
+  const adjusted = await workOf({
+    down: [{ variable: "a" }],
+    across: [],
+    adjustFor: [{ variable: "b" }, { variable: "c" }],
+    comparison: { kind: "group", breakdown: "a", value: "0" },
+  });
+  const replicated = { ...work.sample, replicates: generatedReplicates(work.sample.weight) };
   tell("Estimating …");
   return [
     await measure("Estimates and standard errors of 192 cells", { warmUp: 20, runs: 25, units: RESPONDENTS }, () =>
@@ -144,6 +167,29 @@ async function measureEngine(release: Release, tell: (line: string) => void): Pr
       { warmUp: 2, runs: 8, units: RESPONDENTS },
       () => answer(work),
     ),
+    await measure(
+      "Table of 32 standardised cells with differences from the rest",
+      { warmUp: 2, runs: 8, units: RESPONDENTS },
+      () => answer(standardised),
+    ),
+    await measure(
+      "Table of 8 adjusted groups with differences, logistic on 10 more levels",
+      { warmUp: 2, runs: 8, units: RESPONDENTS },
+      () => answer(adjusted),
+    ),
+    await measure(`192 cells with ${REPLICATES} replicate weights`, { warmUp: 1, runs: 5, units: RESPONDENTS }, () =>
+      estimateTargets(replicated, assignment, targets, [], { ...options, interval: "linear" }),
+    ),
     load,
   ];
+}
+
+const REPLICATES = 80;
+
+/** Replicate weights as a bootstrap's would be: each respondent's weight times a whole number drawn at random. */
+function generatedReplicates(weight: Float64Array): NonNullable<Sample["replicates"]> {
+  const random = createRandom(80);
+  const weights = Array.from({ length: REPLICATES }, () => weight.map((value) => value * random.poisson(1)));
+  const scale = 1 / (REPLICATES - 1);
+  return { weights, scale, replicateScales: new Float64Array(REPLICATES).fill(1), mse: true, degreesOfFreedom: REPLICATES - 1 };
 }
