@@ -1,5 +1,5 @@
 import Papa from "papaparse";
-import type { Cell, Table } from "../../../shared/contracts/tables.ts";
+import type { Cell, OverallResult, Table } from "../../../shared/contracts/tables.ts";
 import { guardTextCell } from "../../../shared/csv.ts";
 import { withheldWords } from "../../../shared/reading.ts";
 import { cellsById, groupName } from "./pivot.ts";
@@ -56,6 +56,15 @@ function figures(cell: Cell): (number | null)[] {
   ];
 }
 
+/** What is said of the table as a whole, one line for each figure. */
+function overallLines({ title, figures: all, p, df }: OverallResult): string[] {
+  const written = all.map(
+    ({ name, unit, estimate, se, low, high }) =>
+      `${title} ${name} (${unit}): ${[estimate, se, low, high].map((value) => value ?? "").join("; ")}`,
+  );
+  return p === null ? written : [...written, `${title} p: ${p} on ${df ?? ""} degrees of freedom`];
+}
+
 /**
  * The table as CSV: one line for each group and margin with figures at full precision, estimates as fractions; then,
  * after an empty line, where they come from, how they were worked out and how to read them.
@@ -81,6 +90,7 @@ export function tableCsv(table: Table): string {
     `Source: ${release.surveyTitle}, ${release.wave}; microdata checksum ${release.checksum}; engine ${table.engine}`,
     `Estimates are ${table.measure === "share" ? "fractions of people: 0.127 is 12.7 of every 100" : "means in the variable's own units"}; intervals at ${table.question.level} %`,
     ...table.notes,
+    ...table.overall.flatMap(overallLines),
   ];
   return Papa.unparse([header.map(guardTextCell), ...lines, [], ...notes.map((note) => [guardTextCell(note)])], {
     newline: "\r\n",
