@@ -3,6 +3,7 @@ import type { Cell, ComparisonResult, Reliability, Table } from "../../shared/co
 import type { CompiledBreakdown } from "../questions/compile.ts";
 import type { AnsweredNode, Answer } from "../questions/work.ts";
 import { adjustPValues } from "../statistics/adjustments.ts";
+import { studentCritical } from "../statistics/distributions.ts";
 import type { ContrastEstimate } from "../statistics/estimate.ts";
 import { reliabilityOfMean, reliabilityOfShare } from "../statistics/reliability.ts";
 
@@ -46,7 +47,21 @@ function reliabilityOf({ estimate }: AnsweredNode, { outcome, standardise, adjus
     : { verdict: "caution", reasons: ["a limit lies beyond the values seen"] };
 }
 
-function presentComparison(contrast: ContrastEstimate, pAdjusted: number | null, level: number): ComparisonResult {
+const NO_LIMITS = { low: null, high: null };
+
+/** Linear limits of a total of people, which is never below 0. */
+function totalLimits(total: number, se: number | null, df: number, level: number): { low: number | null; high: number | null } {
+  if (se === null || df < 1) return NO_LIMITS;
+  const reach = studentCritical(level, df) * se;
+  return { low: Math.max(0, total - reach), high: total + reach };
+}
+
+function presentComparison(
+  contrast: ContrastEstimate,
+  pAdjusted: number | null,
+  level: number,
+  isShare: boolean,
+): ComparisonResult {
   const isShown = pAdjusted !== null && pAdjusted < 1 - level / 100 && contrast.difference !== null && contrast.difference !== 0;
   return {
     reference: contrast.reference,
@@ -60,6 +75,9 @@ function presentComparison(contrast: ContrastEstimate, pAdjusted: number | null,
     ratio: contrast.ratio,
     ratioLow: contrast.ratioLow,
     ratioHigh: contrast.ratioHigh,
+    oddsRatio: isShare ? contrast.oddsRatio : null,
+    oddsRatioLow: isShare ? contrast.oddsRatioLow : null,
+    oddsRatioHigh: isShare ? contrast.oddsRatioHigh : null,
     detectable: contrast.detectable,
     direction: isShown ? (contrast.difference! > 0 ? "higher" : "lower") : "none",
   };
@@ -77,6 +95,11 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
     const reliability = reliabilityOf(node, question);
     if (frame.hidesUnreliable && reliability.verdict === "unreliable") return { key, shown: false, reason: "unreliable" };
     const { estimate } = node;
+    const people = totalLimits(estimate.people, estimate.peopleSe, estimate.df, question.level);
+    const affectedPeople =
+      measure === "share"
+        ? totalLimits(estimate.affectedPeople, estimate.affectedPeopleSe, estimate.df, question.level)
+        : NO_LIMITS;
     return {
       key,
       shown: true,
@@ -84,8 +107,12 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
       affectedRespondents: measure === "share" ? estimate.affectedRespondents : null,
       people: estimate.people,
       peopleSe: estimate.peopleSe,
+      peopleLow: people.low,
+      peopleHigh: people.high,
       affectedPeople: measure === "share" ? estimate.affectedPeople : null,
       affectedPeopleSe: measure === "share" ? estimate.affectedPeopleSe : null,
+      affectedPeopleLow: affectedPeople.low,
+      affectedPeopleHigh: affectedPeople.high,
       estimate: estimate.estimate,
       se: estimate.se,
       low: estimate.low,
@@ -96,7 +123,9 @@ export function presentTable(frame: TableFrame, answer: Answer): Table {
       cv: estimate.cv,
       clipped: estimate.clipped,
       reliability,
-      ...(node.contrast ? { comparison: presentComparison(node.contrast, pAdjusted.get(node) ?? null, question.level) } : {}),
+      ...(node.contrast
+        ? { comparison: presentComparison(node.contrast, pAdjusted.get(node) ?? null, question.level, measure === "share") }
+        : {}),
     };
   };
   const whole = present(answer.nodes[0]!);

@@ -22,6 +22,10 @@ export const ComparisonResult = z.strictObject({
   ratio: z.number().nullable(),
   ratioLow: z.number().nullable(),
   ratioHigh: z.number().nullable(),
+  /** Null for a mean. */
+  oddsRatio: z.number().nullable(),
+  oddsRatioLow: z.number().nullable(),
+  oddsRatioHigh: z.number().nullable(),
   /** Smallest true difference found with 80 % power at the question's level. */
   detectable: z.number().nullable(),
   /** `higher` or `lower` when the adjusted p is below 1 − level; otherwise `none`: no difference shown. */
@@ -40,8 +44,13 @@ export const ShownCell = z.strictObject({
   affectedRespondents: z.number().int().nullable(),
   people: z.number(),
   peopleSe: z.number().nullable(),
+  /** Linear interval, never below 0; the same for those affected. */
+  peopleLow: z.number().nullable(),
+  peopleHigh: z.number().nullable(),
   affectedPeople: z.number().nullable(),
   affectedPeopleSe: z.number().nullable(),
+  affectedPeopleLow: z.number().nullable(),
+  affectedPeopleHigh: z.number().nullable(),
   estimate: z.number().nullable(),
   se: z.number().nullable(),
   low: z.number().nullable(),

@@ -99,6 +99,10 @@ describe("NHANES 2009–2010 from upload to answers", () => {
     // Totals with the condition.
     expect(whole.affectedPeople).toBeCloseTo(28_218_434, -0.5);
     expect(whole.affectedPeopleSe).toBeCloseTo(2_022_446, -0.5);
+    // Linear interval of the total: t on 16 degrees of freedom is 2.1199 (published t table).
+    expect((whole.affectedPeopleHigh! - whole.affectedPeople!) / whole.affectedPeopleSe!).toBeCloseTo(2.1199, 4);
+    // Odds of women over odds of men.
+    expect(women.comparison?.oddsRatio).toBeCloseTo(0.148259 / (1 - 0.148259) / (0.123291 / (1 - 0.123291)), 4);
     // Women less men with the shared PSUs' covariance.
     expect(women.comparison?.difference).toBeCloseTo(0.0249675, 7);
     expect(women.comparison?.se).toBeCloseTo(0.00919, 5);

@@ -13,13 +13,21 @@ type Fact = Parameters<typeof Facts>[0]["facts"][number];
 
 const isFact = (fact: Fact | null): fact is Fact => fact !== null;
 
-function peopleFact(label: string, people: number, se: number | null): Fact {
-  return { label, value: formatPeople(people), ...(se ? { note: `Standard error ${formatPeople(se)}.` } : {}) };
+function peopleFact(label: string, people: number, low: number | null, high: number | null): Fact {
+  const interval = low === null || high === null ? {} : { note: `${formatPeople(low)} to ${formatPeople(high)}.` };
+  return { label, value: formatPeople(people), ...interval };
+}
+
+/** A ratio with its interval; null where it is undefined. */
+function ratioFact(label: string, ratio: number | null, low: number | null, high: number | null): Fact | null {
+  if (ratio === null) return null;
+  const interval = low === null || high === null ? "" : ` (${formatSignificant(low)} to ${formatSignificant(high)})`;
+  return { label, value: `${formatSignificant(ratio)}${interval}` };
 }
 
 function comparisonFacts({ comparison }: ShownCell, table: Table): (Fact | null)[] {
   if (!comparison || comparison.difference === null) return [];
-  const { difference, low, high, p, pAdjusted, ratio, ratioLow, ratioHigh, detectable } = comparison;
+  const { difference, low, high, p, pAdjusted, detectable } = comparison;
   const kind = table.measure;
   const unit = kind === "share" ? "points" : "units";
   const interval = formatDifferenceInterval(kind, low, high);
@@ -30,12 +38,8 @@ function comparisonFacts({ comparison }: ShownCell, table: Table): (Fact | null)
       value: formatDifference(kind, difference, figureDecimals(kind, low, high)),
       ...(interval ? { note: `${interval} (${table.question.level} % interval)` } : {}),
     },
-    ratio === null
-      ? null
-      : {
-          label: "Ratio",
-          value: `${formatSignificant(ratio)}${ratioLow === null || ratioHigh === null ? "" : ` (${formatSignificant(ratioLow)} to ${formatSignificant(ratioHigh)})`}`,
-        },
+    ratioFact("Ratio", comparison.ratio, comparison.ratioLow, comparison.ratioHigh),
+    ratioFact("Odds ratio", comparison.oddsRatio, comparison.oddsRatioLow, comparison.oddsRatioHigh),
     p === null ? null : { label: "p for the difference", value: formatP(p) },
     !isAdjusted || pAdjusted === null
       ? null
@@ -54,8 +58,10 @@ function facts(cell: ShownCell, table: Table): Fact[] {
   const { reliability } = cell;
   return [
     { label: "Respondents", value: formatCount(cell.respondents) },
-    cell.affectedPeople === null ? null : peopleFact("People affected", cell.affectedPeople, cell.affectedPeopleSe),
-    peopleFact("People in the group", cell.people, cell.peopleSe),
+    cell.affectedPeople === null
+      ? null
+      : peopleFact("People affected", cell.affectedPeople, cell.affectedPeopleLow, cell.affectedPeopleHigh),
+    peopleFact("People in the group", cell.people, cell.peopleLow, cell.peopleHigh),
     ...comparisonFacts(cell, table),
     cell.deff === null ? null : { label: "Design effect", value: formatSignificant(cell.deff) },
     {

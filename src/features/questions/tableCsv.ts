@@ -9,8 +9,12 @@ const FIGURES = [
   "affected_respondents",
   "people",
   "people_se",
+  "people_low",
+  "people_high",
   "affected_people",
   "affected_people_se",
+  "affected_people_low",
+  "affected_people_high",
   "estimate",
   "se",
   "low",
@@ -30,6 +34,9 @@ const FIGURES = [
   "ratio",
   "ratio_low",
   "ratio_high",
+  "odds_ratio",
+  "odds_ratio_low",
+  "odds_ratio_high",
   "detectable_difference",
 ] as const;
 
@@ -41,8 +48,12 @@ function figures(cell: Cell): (number | null)[] {
     cell.affectedRespondents,
     cell.people,
     cell.peopleSe,
+    cell.peopleLow,
+    cell.peopleHigh,
     cell.affectedPeople,
     cell.affectedPeopleSe,
+    cell.affectedPeopleLow,
+    cell.affectedPeopleHigh,
     cell.estimate,
     cell.se,
     cell.low,
@@ -52,7 +63,9 @@ function figures(cell: Cell): (number | null)[] {
     cell.effectiveRespondents,
     cell.cv,
     ...[c?.reference, c?.difference, c?.se, c?.low, c?.high, c?.df, c?.p, c?.pAdjusted].map((value) => value ?? null),
-    ...[c?.ratio, c?.ratioLow, c?.ratioHigh, c?.detectable].map((value) => value ?? null),
+    ...[c?.ratio, c?.ratioLow, c?.ratioHigh, c?.oddsRatio, c?.oddsRatioLow, c?.oddsRatioHigh, c?.detectable].map(
+      (value) => value ?? null,
+    ),
   ];
 }
 
