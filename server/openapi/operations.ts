@@ -22,7 +22,7 @@ import {
   SignInInput,
   SignInLinkView,
 } from "../../shared/contracts/session.ts";
-import { Table } from "../../shared/contracts/tables.ts";
+import { ScriptView, Table } from "../../shared/contracts/tables.ts";
 
 /** One call of the API. `answer` null: 204 or a file; the summary says which. */
 export interface Operation {
@@ -147,6 +147,12 @@ export const OPERATIONS: readonly Operation[] = [
     summary: "Records that a table's figures leave the page: `{question, format}`.",
     answer: null,
     status: 204,
+  },
+  {
+    method: "post",
+    path: "/tables/script",
+    summary: "A script in R that works a question's table out again from the release's CSV: `{question}`.",
+    answer: ScriptView,
   },
   {
     method: "get",

@@ -1,18 +1,20 @@
 import { Router } from "express";
 import { z } from "zod";
 import { Question } from "../../shared/contracts/questions.ts";
+import type { ScriptView } from "../../shared/contracts/tables.ts";
 import type { Services } from "../app.ts";
 import { AppError } from "../errors.ts";
 import { currentReader, requirePerson } from "../middleware/signedIn.ts";
 import { parse } from "../parse.ts";
 import { releasePolicy } from "../policies/survey.ts";
 import { caption } from "../questions/caption.ts";
+import { canReproduce, reproduceScript } from "../questions/reproduce.ts";
 import { record } from "../services/ledger.ts";
 import { authorize, loadRelease } from "../services/surveyAccess.ts";
 import { loadCodebook } from "../services/codebook.ts";
 
 /** `POST /api/tables/downloads`: says that a table's figures leave the page, before they do. */
-const DownloadInput = z.strictObject({ question: Question, format: z.enum(["csv", "text", "png", "svg"]) });
+const DownloadInput = z.strictObject({ question: Question, format: z.enum(["csv", "text", "png", "svg", "bundle"]) });
 
 /** `POST /api/tables` and the record of downloads. */
 export function questionRoutes({ questions, sequelize }: Services): Router {
@@ -70,6 +72,14 @@ export function questionRoutes({ questions, sequelize }: Services): Router {
       }),
     );
     response.status(204).end();
+  });
+
+  router.post("/tables/script", requirePerson, async (request, response) => {
+    const { question } = parse(DownloadInput.pick({ question: true }).loose(), request.body);
+    const { release, design, variables, ...rest } = await loadBoth(request, question);
+    const words = caption(question, release, variables, "other" in rest ? rest.other.release : undefined);
+    const script = canReproduce(question, design) ? reproduceScript(question, design, variables, words) : null;
+    response.json({ script } satisfies ScriptView);
   });
 
   return router;

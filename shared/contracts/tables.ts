@@ -134,3 +134,7 @@ export const Table = z.strictObject({
   notes: z.array(z.string()),
 });
 export type Table = z.infer<typeof Table>;
+
+/** `POST /api/tables/script`: a script in R that works the table out again; null for kinds of questions without one yet. */
+export const ScriptView = z.strictObject({ script: z.string().nullable() });
+export type ScriptView = z.infer<typeof ScriptView>;

@@ -74,6 +74,7 @@ export const AUTHORISATION: Record<string, readonly ReaderKind[]> = {
   "POST /releases/:id/publication": itsSteward,
   "POST /tables": mayRead,
   "POST /tables/downloads": mayRead,
+  "POST /tables/script": mayRead,
   "GET /ledger": signedIn,
   "GET /ledger.csv": signedIn,
 };

@@ -4,7 +4,8 @@ import { fileName, saveFile } from "../../charts/saveFile.ts";
 import { Button } from "../../components/Button.tsx";
 import { messageOf } from "../../lib/form.ts";
 import type { Measure } from "./measures.ts";
-import { recordDownload } from "./queries.ts";
+import { tableBundle } from "./bundle.ts";
+import { fetchScript, recordDownload } from "./queries.ts";
 import { tableCsv } from "./tableCsv.ts";
 import { tableText } from "./tableText.ts";
 
@@ -23,7 +24,14 @@ export function TakeAway({ table, measures }: { table: Table; measures: readonly
       saveFile(fileName(table.caption, "csv"), new Blob(["\uFEFF", tableCsv(table)], { type: "text/csv;charset=utf-8" }));
     },
   });
-  const error = copy.error ?? download.error;
+  const bundle = useMutation({
+    mutationFn: async () => {
+      const { script } = await fetchScript(table.question);
+      await recordDownload(table.question, "bundle");
+      saveFile(fileName(table.caption, "zip"), new Blob([tableBundle(table, script)], { type: "application/zip" }));
+    },
+  });
+  const error = copy.error ?? download.error ?? bundle.error;
   return (
     <div className="flex flex-wrap items-center gap-x-4 no-print">
       <Button kind="plain" onPress={() => copy.mutate()} isPending={copy.isPending}>
@@ -31,6 +39,9 @@ export function TakeAway({ table, measures }: { table: Table; measures: readonly
       </Button>
       <Button kind="plain" onPress={() => download.mutate()} isPending={download.isPending}>
         Download CSV
+      </Button>
+      <Button kind="plain" onPress={() => bundle.mutate()} isPending={bundle.isPending}>
+        Reproduce it
       </Button>
       <span role="status" className="text-[0.8125rem] text-muted">
         {copy.isSuccess ? "Copied" : ""}
